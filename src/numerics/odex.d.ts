@@ -6,7 +6,7 @@ export type OutputFunction = (
   x: number,
   y: number[],
   dense: (component: number, x: number) => number,
-) => boolean | undefined | undefined;
+) => unknown;
 export enum Outcome {
   Converged = 0,
   MaxStepsExceeded = 1,
