@@ -1,0 +1,79 @@
+/** The shape of every answer: the JSON object, and what `abundances` and `history` put into it. */
+import type { SolverCounts } from "../numerics/ode-stiff.ts";
+import type { Table } from "../numerics/table.ts";
+import type { CosmologyParameters } from "../parameters/cosmology.ts";
+
+/** A predicted number with its theory error; without `sigma` when no errors were asked for. */
+export interface Estimate {
+  readonly value: number;
+  readonly sigma?: number;
+}
+
+/** One rate that entered the result. */
+export interface RateUsed {
+  /** Reaction id, e.g. `d-p_gamma-he3`. */
+  readonly reaction: string;
+  /** Evaluation used: firstauthorYEAR, or `reaclib`. */
+  readonly evaluation: string;
+  readonly citation: string;
+  /** Factor by which the user scaled the rate; left out when 1. */
+  readonly scale?: number;
+}
+
+/** Where the numbers come from. */
+export interface Provenance {
+  readonly network: string;
+  readonly rates: readonly RateUsed[];
+  /** Names of the corrections that were switched on. */
+  readonly corrections: readonly string[];
+  /** Edition of the constants, e.g. "CODATA 2022, PDG 2024". */
+  readonly constants: string;
+  /** Seed of the Monte Carlo, when samples were drawn. */
+  readonly seed?: number;
+}
+
+/** Cost of the integration. `wall_ms` is the one value that differs from run to run. */
+export interface SolverReport extends Readonly<SolverCounts> {
+  readonly tolerance: number;
+  readonly wall_ms?: number;
+}
+
+/** The answer to one request, the same in every command. */
+export interface Envelope<Results = unknown> {
+  readonly command: string;
+  readonly version: string;
+  readonly cosmology: CosmologyParameters;
+  readonly results: Results;
+  readonly provenance: Provenance;
+  readonly solver: SolverReport;
+  readonly warnings: readonly string[];
+}
+
+/** `results` of the command `abundances`. */
+export interface AbundanceResults {
+  /** Yp, YpMass, dToH, tToH, he3ToH, li6ToH, li7ToH and, with larger networks, be9ToH, b10ToH, b11ToH, cnoToH. */
+  readonly abundances: Readonly<Record<string, Estimate>>;
+  readonly nEffComputed: number;
+  readonly correlation?: { readonly order: readonly string[]; readonly matrix: readonly (readonly number[])[] };
+  readonly quantiles?: Readonly<Record<string, Readonly<Record<string, number>>>>;
+}
+
+/** Landmarks of the first hours. */
+export interface Milestones {
+  readonly tAt1MeV_s: number;
+  /** k_B T where the n -> p rate equals the expansion rate [MeV]. */
+  readonly freezeOutTemperature_MeV: number;
+  readonly neutronToProtonAtFreezeOut: number;
+  readonly tDeuteriumPeak_s: number;
+  readonly T9DeuteriumPeak: number;
+  readonly tAt1e9K_s: number;
+  /** T_gamma/T_nue at the end. */
+  readonly photonToNeutrinoTemperature: number;
+}
+
+/** `results` of the command `history`. */
+export interface HistoryResults {
+  readonly table: Table;
+  readonly milestones: Milestones;
+  readonly nEffComputed?: number;
+}
