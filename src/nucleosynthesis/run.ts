@@ -1,0 +1,197 @@
+/** One nucleosynthesis run: n <-> p from 10 MeV, the network from equilibrium near 2 MeV to T9 = 0.01. */
+import type { ThermalHistory } from "../background/history.ts";
+import { mevToT9 } from "../constants/units.ts";
+import { type CompiledNetwork, compileNetwork } from "../network/compile.ts";
+import { factorInPlace, solveInPlace } from "../network/elimination.ts";
+import { lnEquilibriumAbundance } from "../network/nse.ts";
+import { luFactor, luSolve } from "../numerics/linear.ts";
+import { type SolverCounts, type StiffOptions, StiffStepper, type StiffSystem } from "../numerics/ode-stiff.ts";
+import type { WeakTable } from "../weak/table.ts";
+import { networkTable, sampleClock, TABLE_INTERVALS, weakOnlyTable } from "./coefficients.ts";
+import type { FluxTable } from "./flux-table.ts";
+import { type NetworkData, WEAK_REACTION } from "./network-data.ts";
+
+/** Temperature where n <-> p starts from its equilibrium [MeV]. */
+export const WEAK_START_MEV = 10;
+/** Temperature where the network starts in statistical equilibrium [MeV]. */
+export const NETWORK_START_MEV = 2;
+/** Temperature where the network ends [GK]; t is about 1.8e6 s. */
+export const END_T9 = 0.01;
+
+/** Everything a run needs that omega_b, tau_n and rate factors do not change. */
+export interface RunContext {
+  readonly data: NetworkData;
+  readonly history: ThermalHistory;
+  readonly weakTable: FluxTable;
+  readonly table: FluxTable;
+  /** ln(n_b/N_A) at eta10 = 1 and T where the network starts. */
+  readonly lnRhoNStart: number;
+}
+
+/** What changes from run to run. */
+export interface RunInputs {
+  readonly eta10: number;
+  /** Neutron mean life [s]. */
+  readonly tauN: number;
+  /** Factor on both directions of each reaction, n <-> p first; all 1 if left out. */
+  readonly factors?: Float64Array;
+  /** Relative error control. */
+  readonly tolerance: number;
+  readonly method?: "rodas4" | "rodas5p";
+  /** Table with some columns varied, instead of the context's. */
+  readonly table?: FluxTable;
+}
+
+export interface NuclearRun {
+  /** Final n_i/n_b in the order of the network's nuclides. */
+  readonly Y: Float64Array;
+  readonly counts: SolverCounts;
+}
+
+/** Joins a network, a thermal history and weak rates. */
+export function prepareRun(data: NetworkData, history: ThermalHistory, weak: WeakTable): RunContext {
+  const sWeak = -Math.log(mevToT9(WEAK_START_MEV));
+  const sStart = -Math.log(mevToT9(NETWORK_START_MEV));
+  const sEnd = -Math.log(END_T9);
+  const weakIntervals = 256;
+  const clock = sampleClock(history, sStart, sEnd, TABLE_INTERVALS);
+  return {
+    data,
+    history,
+    weakTable: weakOnlyTable(sampleClock(history, sWeak, sStart, weakIntervals), weak),
+    table: networkTable(data, clock, weak),
+    lnRhoNStart: clock.lnRhoN.value[0],
+  };
+}
+
+const WEAK_NETWORK = compileNetwork(["n", "p"], [{ id: WEAK_REACTION, reactants: ["n"], products: ["p"] }]);
+
+/** A flux table at given eta10, tau_n and factors, as a stiff system in s with sparse linear algebra. */
+export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs: RunInputs): StiffSystem {
+  const fluxes = network.fluxes;
+  const scale = new Float64Array(fluxes);
+  for (let f = 0; f < fluxes; f++)
+    scale[f] = inputs.eta10 ** table.etaPowers[f] * (inputs.factors?.[f >> 1] ?? 1) * (f < 2 ? 1 / inputs.tauN : 1);
+  const c = new Float64Array(fluxes + 1);
+  const dc = new Float64Array(fluxes + 1);
+  let at = Number.NaN;
+  let share = 0;
+  const load = (s: number) => {
+    if (s === at) return;
+    at = s;
+    table.values(s, c);
+    share = inputs.eta10 * c[fluxes];
+    const clock = 1 / Math.sqrt(1 + share);
+    for (let f = 0; f < fluxes; f++) c[f] *= scale[f] * clock;
+  };
+  const { elimination } = network;
+  const n = network.n;
+  const values = new Float64Array(elimination.slots);
+  let sLast = 0;
+  let yLast = new Float64Array(0);
+  let dense: { matrix: Float64Array; pivots: Int32Array } | null = null;
+  return {
+    n,
+    rhs(s, Y, out) {
+      load(s);
+      network.derivatives(c, Y, out);
+    },
+    timeDerivative(s, Y, out) {
+      load(s);
+      table.slopes(s, dc);
+      const clock = 1 / Math.sqrt(1 + share);
+      const drift = (-0.5 * inputs.eta10 * dc[fluxes]) / (1 + share);
+      for (let f = 0; f < fluxes; f++) dc[f] = dc[f] * scale[f] * clock + c[f] * drift;
+      network.derivatives(dc, Y, out);
+    },
+    solver: {
+      update(s, Y) {
+        sLast = s;
+        yLast = Y as Float64Array<ArrayBuffer>;
+      },
+      factor(shift) {
+        load(sLast);
+        dense = null;
+        network.assemble(c, yLast, shift, values);
+        if (factorInPlace(elimination, values)) return true;
+        // A pivot underflowed: fall back to dense elimination with pivoting.
+        const matrix = new Float64Array(n * n);
+        network.jacobian(c, yLast, matrix);
+        for (let i = 0; i < n * n; i++) matrix[i] = -matrix[i];
+        for (let i = 0; i < n; i++) matrix[i * n + i] += shift;
+        const pivots = new Int32Array(n);
+        dense = { matrix, pivots };
+        return luFactor(matrix, n, pivots);
+      },
+      solve(b) {
+        if (dense) luSolve(dense.matrix, n, dense.pivots, b);
+        else solveInPlace(elimination, values, b);
+      },
+    },
+  };
+}
+
+/** Absolute tolerance of each nuclide: rtol times a floor, so that traces are followed relatively down to it. */
+export function tolerances(data: NetworkData, rtol: number): StiffOptions {
+  return { rtol, atol: new Float64Array(data.nuclides.length).fill(rtol * 1e-15), firstStep: 1e-3, maxSteps: 20000 };
+}
+
+/** Abundances at the start of the network: n and p from the weak rates alone, all else in statistical equilibrium. */
+export function initialAbundances(context: RunContext, inputs: RunInputs): { Y: Float64Array; counts: SolverCounts } {
+  const { weakTable, data } = context;
+  const weakInputs = { ...inputs, factors: inputs.factors?.subarray(0, 1) };
+  const system = networkSystem(WEAK_NETWORK, weakTable, weakInputs);
+  const c = new Float64Array(3);
+  weakTable.values(weakTable.start, c);
+  const Xn = c[1] / (c[0] + c[1]);
+  const end = weakTable.start + weakTable.step * weakTable.intervals;
+  const stepper = new StiffStepper(system, weakTable.start, [Xn, 1 - Xn], end, {
+    rtol: inputs.tolerance,
+    atol: 1e-30,
+    method: inputs.method,
+    firstStep: 1e-2,
+  });
+  while (!stepper.done) stepper.step();
+  const T9 = mevToT9(NETWORK_START_MEV);
+  const rhoN = inputs.eta10 * Math.exp(context.lnRhoNStart);
+  const Y = new Float64Array(data.nuclides.length);
+  const [neutron, proton] = ["n", "p"].map((id) => data.nuclides[data.compiled.index.get(id) as number]);
+  let bound = 0;
+  data.nuclides.forEach((x, i) => {
+    if (x.A === 1) return;
+    Y[i] = Math.exp(lnEquilibriumAbundance(x, neutron, proton, T9 * 1e9, rhoN, stepper.y[0], stepper.y[1]));
+    bound += x.A * Y[i];
+  });
+  const free = 1 - bound;
+  Y[data.compiled.index.get("n") as number] = stepper.y[0] * free;
+  Y[data.compiled.index.get("p") as number] = free - stepper.y[0] * free;
+  return { Y, counts: stepper.counts };
+}
+
+/**
+ * Runs the network to T9 = 0.01.
+ * @throws {CalculationError} with s = -ln T9 and the reason if the integration fails
+ */
+export function runNetwork(context: RunContext, inputs: RunInputs): NuclearRun {
+  const start = initialAbundances(context, inputs);
+  const table = inputs.table ?? context.table;
+  const system = networkSystem(context.data.compiled, table, inputs);
+  const end = table.start + table.step * table.intervals;
+  const stepper = new StiffStepper(system, table.start, start.Y, end, {
+    ...tolerances(context.data, inputs.tolerance),
+    method: inputs.method,
+  });
+  while (!stepper.done) stepper.step();
+  return { Y: stepper.y, counts: addCounts(start.counts, stepper.counts) };
+}
+
+/** Sum of two sets of solver counts. */
+export function addCounts(a: SolverCounts, b: SolverCounts): SolverCounts {
+  return {
+    steps: a.steps + b.steps,
+    rejected: a.rejected + b.rejected,
+    rhs: a.rhs + b.rhs,
+    jacobians: a.jacobians + b.jacobians,
+    factorisations: a.factorisations + b.factorisations,
+  };
+}
