@@ -64,7 +64,8 @@ export function prepareRun(data: NetworkData, history: ThermalHistory, weak: Wea
   };
 }
 
-const WEAK_NETWORK = compileNetwork(["n", "p"], [{ id: WEAK_REACTION, reactants: ["n"], products: ["p"] }]);
+/** The network of n <-> p alone. */
+export const WEAK_NETWORK = compileNetwork(["n", "p"], [{ id: WEAK_REACTION, reactants: ["n"], products: ["p"] }]);
 
 /** A flux table at given eta10, tau_n and factors, as a stiff system in s with sparse linear algebra. */
 export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs: RunInputs): StiffSystem {

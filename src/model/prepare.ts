@@ -1,0 +1,290 @@
+/** A prepared model: keeps background, weak rates and compiled network, and recomputes only what a changed key touches. */
+import { type BackgroundOptions, computeThermalHistory, type ThermalHistory } from "../background/history.ts";
+import type { RateLibrary, SelectedReaction } from "../nuclear/library.ts";
+import { selectNetwork } from "../nuclear/library.ts";
+import {
+  ABUNDANCE_NAMES,
+  type AbundanceName,
+  finalAbundances,
+  HEAVY_ABUNDANCE_NAMES,
+  HEAVY_NETWORKS,
+} from "../nucleosynthesis/abundances.ts";
+import { assembleNetwork, type NetworkData, WEAK_REACTION } from "../nucleosynthesis/network-data.ts";
+import { addCounts, prepareRun, type RunContext, type RunInputs, runNetwork } from "../nucleosynthesis/run.ts";
+import { variedTable } from "../nucleosynthesis/vary.ts";
+import { InputError } from "../numerics/check.ts";
+import { type ExpressionFunction, trivialExpression } from "../numerics/expression.ts";
+import type { SolverCounts } from "../numerics/ode-stiff.ts";
+import {
+  type CosmologyParameters,
+  type Keys,
+  NUCLEOSYNTHESIS_CORRECTIONS,
+  resolveParameters,
+} from "../parameters/cosmology.ts";
+import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
+import { propagateLinearly } from "../uncertainty/propagation.ts";
+import { tabulateWeakRates, type WeakTable } from "../weak/table.ts";
+
+export interface Estimate {
+  readonly value: number;
+  readonly sigma?: number;
+}
+
+export interface AbundanceRun {
+  readonly abundances: Partial<Record<AbundanceName, Estimate>>;
+  readonly nEffComputed: number;
+  readonly correlation?: { readonly order: readonly string[]; readonly matrix: readonly (readonly number[])[] };
+  readonly quantiles?: Readonly<Record<string, Readonly<Record<string, number>>>>;
+  readonly solver: SolverCounts & { readonly tolerance: number };
+  readonly warnings: readonly string[];
+}
+
+/** Expansion factor on H(T): T [K], TMeV, t [s], H [1/s] before the factor. */
+export const EXPANSION_VARIABLES = ["T", "TMeV", "t", "H"] as const;
+
+/** Compiles an expansion expression; given to the model so that the expression parser is loaded only when needed. */
+export type ExpressionCompiler = (text: string) => ExpressionFunction;
+
+export interface Model {
+  /** Parameters of the model with some keys replaced, completed and checked. */
+  parameters(overrides?: Keys): CosmologyParameters;
+  /** Abundances with the errors asked for by `errors`. Synchronous; throws InputError or CalculationError. */
+  abundances(overrides?: Keys, progress?: (done: number, total: number) => void): AbundanceRun;
+  /** The run context (history, flux tables) for these keys, for commands that look inside. */
+  context(parameters: CosmologyParameters, gravity?: number): RunContext;
+  /** Rates in use for these keys. */
+  selection(parameters: CosmologyParameters): readonly SelectedReaction[];
+  /** Names and values of the reported abundances for inputs of a run. */
+  evaluate(context: RunContext, inputs: RunInputs): { names: AbundanceName[]; values: number[]; counts: SolverCounts };
+  /** Standardised sources of error in order: n_p (tau_n), each reaction; omega_b last where it has a sigma. */
+  readonly library: RateLibrary;
+}
+
+const PAIRS: readonly (readonly (keyof Keys)[])[] = [
+  ["omegaB", "eta10"],
+  ["nEff", "deltaNEff"],
+  ["tauReion", "zReion"],
+];
+
+/** Base keys with overrides; a key that replaces its partner (eta10 for omegaB) removes it. */
+export function mergeKeys(base: Keys, overrides: Keys = {}): Keys {
+  const merged: Record<string, unknown> = { ...base };
+  for (const pair of PAIRS) if (pair.some((k) => overrides[k] !== undefined)) for (const k of pair) delete merged[k];
+  for (const [k, v] of Object.entries(overrides)) if (v !== undefined) merged[k] = v;
+  return merged as Keys;
+}
+
+/**
+ * Prepares a model. Nothing is computed until asked for; what has been computed is kept until a key that it depends on
+ * changes: network and rates (network, evaluations), thermal history (nEff, xi, expansion, QED and decoupling
+ * switches), weak table (the same and xiE, weak switches), flux table (all of these). omegaB, tauN and scales touch none.
+ * @param library parsed or lazily parsed rates
+ * @param keys defaults of every later call
+ * @param compile turns an expansion expression into a function; without it only constants are accepted
+ */
+export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: ExpressionCompiler): Model {
+  const network = keep<NetworkData>();
+  const history = keep<ThermalHistory>();
+  const weak = keep<WeakTable>();
+  const prepared = keep<RunContext>();
+
+  const selection = (p: CosmologyParameters) => selectNetwork(library, p.network, p.evaluations);
+
+  function context(p: CosmologyParameters, gravity = 1): RunContext {
+    const off = (name: (typeof NUCLEOSYNTHESIS_CORRECTIONS)[number]) => p.without.includes(name);
+    const networkKey = JSON.stringify([p.network, p.evaluations]);
+    const data = network(networkKey, () => assembleNetwork(p.network, selection(p), (id) => library.nuclide(id)));
+    const options: BackgroundOptions = {
+      deltaNEff: p.deltaNEff,
+      xiE: p.xiE,
+      xiMu: p.xiMu,
+      xiTau: p.xiTau,
+      qedE2: !off("qed-e2"),
+      qedE3: !off("qed-e2") && !off("qed-e3"),
+      incompleteDecoupling: !off("incomplete-decoupling"),
+      gravity,
+    };
+    const backgroundKey = JSON.stringify([options, p.expansion]);
+    const background = history(backgroundKey, () =>
+      computeThermalHistory({ ...options, expansion: expansionFunction(p.expansion, compile) }),
+    );
+    const switches = {
+      coulomb: !off("coulomb"),
+      radiative: !off("radiative"),
+      finiteMass: !off("finite-mass"),
+      weakMagnetism: !off("finite-mass") && !off("weak-magnetism"),
+    };
+    const weakKey = JSON.stringify([backgroundKey, switches]);
+    const rates = weak(weakKey, () => tabulateWeakRates(background, p.xiE, switches));
+    return prepared(JSON.stringify([networkKey, weakKey]), () => prepareRun(data, background, rates));
+  }
+
+  function evaluate(ctx: RunContext, inputs: RunInputs) {
+    const heavy = HEAVY_NETWORKS.includes(ctx.data.name);
+    const run = runNetwork(ctx, inputs);
+    const found = finalAbundances(ctx.data.nuclides, run.Y, heavy);
+    const names: AbundanceName[] = [...ABUNDANCE_NAMES, ...(heavy ? HEAVY_ABUNDANCE_NAMES : [])];
+    return { names, values: names.map((name) => found[name] as number), counts: run.counts };
+  }
+
+  const parameters = (overrides?: Keys) => resolveParameters(mergeKeys(keys, overrides), NUCLEOSYNTHESIS_CORRECTIONS);
+
+  return {
+    library,
+    parameters,
+    selection,
+    context,
+    evaluate,
+    abundances(overrides, progress) {
+      const p = parameters(overrides);
+      const ctx = context(p);
+      const factors = scaleFactors(ctx.data, p.scales, library);
+      const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
+      const central = evaluate(ctx, inputs);
+      let counts = central.counts;
+      const report = (
+        errors: Pick<AbundanceRun, "correlation" | "quantiles"> & { sigma?: ArrayLike<number> },
+      ): AbundanceRun => ({
+        abundances: Object.fromEntries(
+          central.names.map((name, i) => [
+            name,
+            errors.sigma ? { value: central.values[i], sigma: errors.sigma[i] } : { value: central.values[i] },
+          ]),
+        ),
+        nEffComputed: ctx.history.nEffComputed,
+        ...(errors.correlation ? { correlation: errors.correlation } : {}),
+        ...(errors.quantiles ? { quantiles: errors.quantiles } : {}),
+        solver: { ...counts, tolerance: p.tolerance },
+        warnings: validityWarnings(p),
+      });
+      if (p.errors === "none") return report({});
+      const sources = errorSources(ctx, p);
+      const at = (variations: Float64Array) => {
+        const run = evaluate(ctx, applyVariations(ctx, inputs, p, variations));
+        counts = addCounts(counts, run.counts);
+        return run.values;
+      };
+      if (p.errors === "linear") {
+        let done = 0;
+        const linear = propagateLinearly(central.values, sources, (s, sign) => {
+          progress?.(done++, 2 * sources);
+          const variations = new Float64Array(sources);
+          variations[s] = sign;
+          return at(variations);
+        });
+        return report({
+          sigma: linear.sigma,
+          correlation: { order: central.names, matrix: linear.correlation },
+        });
+      }
+      if (p.samples < 2) throw new InputError("range", `samples = ${p.samples}: errors by sampling need at least 2`);
+      const samples = central.names.map(() => new Float64Array(p.samples));
+      for (let i = 0; i < p.samples; i++) {
+        progress?.(i, p.samples);
+        at(standardNormals(p.seed, i, sources)).forEach((x, k) => {
+          samples[k][i] = x;
+        });
+      }
+      const summary = summariseSamples(samples);
+      return report({
+        sigma: summary.sigma,
+        correlation: { order: central.names, matrix: summary.correlation },
+        quantiles: Object.fromEntries(central.names.map((name, i) => [name, summary.quantiles[i]])),
+      });
+    },
+  };
+}
+
+/** Keeps the last result for its key. */
+function keep<T>(): (key: string, compute: () => T) => T {
+  let lastKey: string | undefined;
+  let last: T;
+  return (key, compute) => {
+    if (key !== lastKey) {
+      last = compute();
+      lastKey = key;
+    }
+    return last;
+  };
+}
+
+function expansionFunction(text: string, compile?: ExpressionCompiler): BackgroundOptions["expansion"] {
+  const constant = trivialExpression(text);
+  if (constant === 1) return undefined;
+  if (constant !== undefined) return () => constant;
+  if (!compile)
+    throw new InputError(
+      "expansion",
+      `expansion = ${text}: expressions are compiled when the model is prepared; give it to prepare()`,
+    );
+  return compile(text);
+}
+
+/** Number of standardised sources: n_p through tau_n, each reaction, and omega_b where it has a sigma. */
+export function errorSources(ctx: RunContext, p: CosmologyParameters): number {
+  return 1 + ctx.data.reactions.length + (p.omegaBSigma > 0 ? 1 : 0);
+}
+
+/**
+ * Inputs with standardised variations: entry 0 tau_n by its sigma, entry r of reaction r by f_u(T9)^p, the last one
+ * omega_b by its sigma where it has one.
+ */
+export function applyVariations(
+  ctx: RunContext,
+  inputs: RunInputs,
+  p: CosmologyParameters,
+  variations: Float64Array,
+): RunInputs {
+  const reactions = ctx.data.reactions.length;
+  const extra = p.omegaBSigma > 0 ? variations[reactions + 1] : 0;
+  const varied = variedTable(ctx, variations.subarray(1, reactions + 1), inputs.factors as Float64Array);
+  return {
+    ...inputs,
+    ...varied,
+    tauN: p.tauN + variations[0] * p.tauNSigma,
+    eta10: p.eta10 * (1 + (extra * p.omegaBSigma) / p.omegaB),
+  };
+}
+
+/** Constant factors per reaction of the compiled network, n_p first. */
+export function scaleFactors(
+  data: NetworkData,
+  scales: Readonly<Record<string, number>>,
+  library: RateLibrary,
+): Float64Array {
+  const factors = new Float64Array(data.reactions.length + 1).fill(1);
+  const index = new Map([[WEAK_REACTION, 0], ...data.reactions.map((r, i): [string, number] => [r.id, i + 1])]);
+  for (const [given, factor] of Object.entries(scales)) {
+    const id = given === WEAK_REACTION ? given : library.reactionId(given);
+    const i = index.get(id);
+    if (i === undefined)
+      throw new InputError(
+        "reaction",
+        `scale ${given}: reaction is not in network ${data.name}; choose another network`,
+      );
+    factors[i] = factor;
+  }
+  return factors;
+}
+
+/** What is legal but outside the range where the physics here is checked. */
+export function validityWarnings(p: CosmologyParameters): string[] {
+  const warnings: string[] = [];
+  if (p.xiE !== 0 || p.xiMu !== 0 || p.xiTau !== 0)
+    warnings.push(
+      "neutrino degeneracy enters densities and weak rates; its effect on the energy exchange is neglected",
+    );
+  if (p.deltaNEff < -1)
+    warnings.push(
+      `deltaNEff = ${p.deltaNEff}: a deficit this large has no physical model behind it; H^2 is scaled only`,
+    );
+  if (p.tolerance > 1e-3)
+    warnings.push(`tolerance = ${p.tolerance}: integration error may exceed 1e-3 of an abundance`);
+  if (p.network === "twelve" && p.eta10 > 20)
+    warnings.push(`network twelve at eta10 = ${p.eta10.toPrecision(4)}: flows beyond A = 7 are left out; use extended`);
+  if (p.eta10 < 0.3)
+    warnings.push(
+      `eta10 = ${p.eta10.toPrecision(4)}: nucleosynthesis is incomplete and sensitive to rates of weak support`,
+    );
+  return warnings;
+}
