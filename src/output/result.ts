@@ -1,13 +1,10 @@
 /** The shape of every answer: the JSON object, and what `abundances` and `history` put into it. */
+import type { AbundanceRun, Estimate } from "../model/prepare.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { Table } from "../numerics/table.ts";
 import type { CosmologyParameters } from "../parameters/cosmology.ts";
 
-/** A predicted number with its theory error; without `sigma` when no errors were asked for. */
-export interface Estimate {
-  readonly value: number;
-  readonly sigma?: number;
-}
+export type { Estimate };
 
 /** One rate that entered the result. */
 export interface RateUsed {
@@ -50,13 +47,7 @@ export interface Envelope<Results = unknown> {
 }
 
 /** `results` of the command `abundances`. */
-export interface AbundanceResults {
-  /** Yp, YpMass, dToH, tToH, he3ToH, li6ToH, li7ToH and, with larger networks, be9ToH, b10ToH, b11ToH, cnoToH. */
-  readonly abundances: Readonly<Record<string, Estimate>>;
-  readonly nEffComputed: number;
-  readonly correlation?: { readonly order: readonly string[]; readonly matrix: readonly (readonly number[])[] };
-  readonly quantiles?: Readonly<Record<string, Readonly<Record<string, number>>>>;
-}
+export type AbundanceResults = Omit<AbundanceRun, "solver" | "warnings">;
 
 /** Landmarks of the first hours. */
 export interface Milestones {

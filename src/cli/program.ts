@@ -1,0 +1,99 @@
+/** The command line: its commands, each loaded only when run, and every error as one line. */
+import { Command, CommanderError, type Option } from "commander";
+import { printNotice, printResult } from "../node/print.ts";
+import { suggestNearest } from "../nuclear/reaction-name.ts";
+import { EmberlineError, InputError } from "../numerics/check.ts";
+import { VERSION } from "../version.ts";
+import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
+
+/** One command: its help, its options, and the module that does it. */
+interface CommandSpec {
+  readonly name: string;
+  readonly summary: string;
+  readonly options: () => readonly Option[];
+  readonly example: string;
+  readonly load: () => Promise<{ run(options: Options): Promise<void> }>;
+}
+
+const COMMANDS: readonly CommandSpec[] = [
+  {
+    name: "abundances",
+    summary: "light-element abundances of one cosmology, each with its theory error",
+    options: () => [...nucleosynthesisOptions(), ...errorOptions(), ...outputOptions()],
+    example: "emberline abundances --omega-b 0.0224±0.0001 --tau-n 879.4 --network twelve",
+    load: () => import("./commands/abundances.ts"),
+  },
+  {
+    name: "history",
+    summary: "temperatures, expansion, weak rates and every nuclide through the first hours",
+    options: () => [...nucleosynthesisOptions(), ...outputOptions(["temperature", "weak", "abundances"])],
+    example: "emberline history --network twelve --chart history.svg --format csv --out history.csv",
+    load: () => import("./commands/history.ts"),
+  },
+];
+const DEFAULT_COMMAND = "abundances";
+
+function addCommand(program: Command, spec: CommandSpec): void {
+  const command = program
+    .command(spec.name, { isDefault: spec.name === DEFAULT_COMMAND })
+    .summary(spec.summary)
+    .description(`${spec.summary[0].toUpperCase()}${spec.summary.slice(1)}.`)
+    .addHelpText("after", `\nExample:\n  ${spec.example}`)
+    .action(async (options: Options) => (await spec.load()).run(options));
+  for (const option of spec.options()) command.addOption(option);
+}
+
+/** The whole command line; errors are thrown, help and version go to `print`. */
+export function makeProgram(print: (text: string) => void): Command {
+  const program = new Command("emberline")
+    .description("Big Bang nucleosynthesis and the thermal history of the early Universe.")
+    .version(VERSION)
+    .exitOverride()
+    .configureOutput({ writeOut: print, writeErr: () => {} })
+    .addHelpText("after", `\nWithout a command: ${DEFAULT_COMMAND} of the default cosmology.`);
+  for (const spec of COMMANDS) addCommand(program, spec);
+  return program;
+}
+
+/** Commander takes a stray word for an argument of the default command; here it is an unknown command. */
+function requireKnownCommand(args: readonly string[]): void {
+  const names = [...COMMANDS.map((spec) => spec.name), "help"];
+  const word = args[0] === "help" ? args[1] : args[0];
+  if (word === undefined || word.startsWith("-") || names.includes(word)) return;
+  const nearest = suggestNearest(word, names);
+  const hint = nearest === undefined ? "" : ` did you mean ${nearest}?`;
+  throw new InputError("command", `unknown command ${word};${hint} commands are ${names.join(", ")}`);
+}
+
+/** One line for an error, and the exit status. */
+export function describeError(error: unknown): { readonly line: string; readonly status: number } {
+  const say = (text: string) => `emberline: ${text.trim().replace(/\s*\n\s*/g, " ")}`;
+  if (error instanceof EmberlineError) return { line: say(error.message), status: error.exitCode };
+  if (error instanceof CommanderError)
+    return { line: say(`${error.message.replace(/^error: /, "")}; see emberline help`), status: 2 };
+  const message = error instanceof Error ? `${error.name}: ${error.message}` : String(error);
+  return { line: say(`the calculation failed: ${message}; --debug shows where`), status: 1 };
+}
+
+/**
+ * Runs one command line.
+ * @param args words after the program's name
+ * @returns exit status: 0 done, 1 the calculation failed, 2 bad input
+ */
+export async function main(args: readonly string[]): Promise<number> {
+  const printed: string[] = [];
+  try {
+    requireKnownCommand(args);
+    await makeProgram((text) => printed.push(text)).parseAsync(args, { from: "user" });
+    return 0;
+  } catch (error) {
+    if (error instanceof CommanderError && error.exitCode === 0) {
+      await printResult(printed.join(""));
+      return 0;
+    }
+    const { line, status } = describeError(error);
+    await printNotice(line);
+    if (args.includes("--debug") && error instanceof Error) await printNotice(error.stack ?? "");
+    return status;
+  }
+}

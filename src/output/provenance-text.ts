@@ -1,0 +1,109 @@
+/** The lower half of every text output: cosmology, corrections, rates, cost, warnings. */
+import { formatReaction } from "../nuclear/reaction-name.ts";
+import type { CosmologyParameters } from "../parameters/cosmology.ts";
+import { NUCLEOSYNTHESIS_CORRECTIONS } from "../parameters/cosmology.ts";
+import type { Envelope, RateUsed } from "./result.ts";
+import { alignColumns, displayWidth, formatEstimate, formatNumber, pad, TEXT_WIDTH, wrap } from "./text.ts";
+
+/** Evaluation name of the fits that are taken as they stand; they are listed together. */
+const COLLECTION = "reaclib";
+
+/** A labelled paragraph, its label in a column of its own. */
+export function entry(label: string, text: string): string[] {
+  return wrap(text, `  ${pad(label, 13)}`, " ".repeat(15));
+}
+
+function measured(value: number, sigma: number): string {
+  return sigma > 0 ? formatEstimate(value, sigma) : String(value);
+}
+
+/** The parameters in words; those at zero or at their neutral value are named only when set. */
+export function cosmologyLines(c: CosmologyParameters): string[] {
+  const parts = [
+    `omega_b ${measured(c.omegaB, c.omegaBSigma)}`,
+    `eta10 ${formatNumber(c.eta10)}`,
+    `N_eff ${formatNumber(c.nEff, 4)}`,
+    `tau_n ${measured(c.tauN, c.tauNSigma)} s`,
+    `T_CMB ${c.tCmb} K`,
+  ];
+  for (const [name, value] of [
+    ["xi_e", c.xiE],
+    ["xi_mu", c.xiMu],
+    ["xi_tau", c.xiTau],
+  ] as const)
+    if (value !== 0) parts.push(`${name} ${value}`);
+  const lines = entry("cosmology", parts.join(", "));
+  if (c.expansion.trim() !== "1") lines.push(...entry("expansion", `H(T) times ${c.expansion}`));
+  const scaled = Object.entries(c.scales).map(([id, factor]) => `${formatReaction(id)} x ${factor}`);
+  if (scaled.length > 0) lines.push(...entry("scaled rates", scaled.join(", ")));
+  return lines;
+}
+
+/** Rates grouped by source: evaluations of their own one by one, the collection's reactions in one paragraph. */
+function rateLines(rates: readonly RateUsed[]): string[] {
+  const own = rates.filter((rate) => rate.evaluation !== COLLECTION);
+  const rest = rates.filter((rate) => rate.evaluation === COLLECTION);
+  const heads = alignColumns(own.map((rate) => [`  ${formatReaction(rate.reaction)}`, rate.evaluation, ""]));
+  const room = Math.max(0, ...heads.map(displayWidth)) + 2;
+  const lines = own.flatMap((rate, i) => wrap(rate.citation, pad(heads[i], room), " ".repeat(room)));
+  if (rest.length > 0) {
+    const label = own.length > 0 ? `and ${rest.length} from ${COLLECTION}:` : `${rest.length} from ${COLLECTION}:`;
+    const names = rest.map((rate) => formatReaction(rate.reaction).replaceAll(" ", "\u00a0")).join(", ");
+    lines.push(...wrap(`${label} ${names}`, "  ", "    ").map((line) => line.replaceAll("\u00a0", " ")));
+  }
+  return lines;
+}
+
+/** Network, corrections, solver, rates and warnings of an answer. */
+export function provenanceLines(answer: Envelope): string[] {
+  const { provenance, solver, cosmology } = answer;
+  const off = NUCLEOSYNTHESIS_CORRECTIONS.filter((name) => !provenance.corrections.includes(name));
+  const cost = [
+    `${solver.steps} steps`,
+    `${solver.rejected} rejected`,
+    `${solver.rhs} right-hand sides`,
+    `${solver.jacobians} Jacobians`,
+    `tolerance ${solver.tolerance}`,
+    ...(solver.wall_ms === undefined ? [] : [`${Math.round(solver.wall_ms)} ms`]),
+  ];
+  const lines = [
+    ...cosmologyLines(cosmology),
+    ...entry("corrections", provenance.corrections.length > 0 ? provenance.corrections.join(", ") : "none"),
+    ...(off.length > 0 ? entry("left out", off.join(", ")) : []),
+    ...entry("constants", provenance.constants),
+    ...entry("solver", cost.join(", ")),
+    ...entry("network", `${provenance.network}: ${provenance.rates.length} rates and n ↔ p`),
+    "",
+    "Rates",
+    ...rateLines(provenance.rates),
+  ];
+  if (answer.warnings.length > 0) lines.push("", "Warnings", ...answer.warnings.flatMap((w) => wrap(w, "  ", "    ")));
+  return lines;
+}
+
+/** Title line: what on the left, program and version on the right. */
+export function titleLine(title: string, version: string): string {
+  const right = `emberline ${version}`;
+  return pad(title, TEXT_WIDTH - displayWidth(right)) + right;
+}
+
+/** Provenance as short lines, for the comments of CSV and the meta of ECSV. */
+export function provenanceNotes(answer: Envelope): Record<string, string | readonly string[]> {
+  const { provenance, cosmology: c } = answer;
+  const fixed: Record<string, unknown> = { ...c };
+  const cosmology = Object.entries(fixed)
+    .filter(([, value]) => typeof value === "number" || (typeof value === "string" && value !== ""))
+    .map(([key, value]) => `${key}=${value}`);
+  return {
+    command: `emberline ${answer.version} ${answer.command}`,
+    cosmology: cosmology.join(" "),
+    corrections: provenance.corrections.length > 0 ? provenance.corrections.join(" ") : "none",
+    constants: provenance.constants,
+    network: provenance.network,
+    rates: provenance.rates.map(
+      (rate) =>
+        `${rate.reaction}: ${rate.evaluation}${rate.scale === undefined ? "" : ` x ${rate.scale}`}; ${rate.citation}`,
+    ),
+    ...(answer.warnings.length > 0 ? { warnings: answer.warnings } : {}),
+  };
+}
