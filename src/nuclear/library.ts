@@ -197,7 +197,7 @@ export function selectNetwork(
         "evaluation",
         `evaluation ${name}: the weak rates n <-> p are computed, there is no file to choose`,
       );
-    const id = resolveReaction(name, ids, `evaluation (network ${networkName})`);
+    const id = resolveReaction(name, ids, `network ${networkName}, evaluation of`);
     if (asked.has(id)) throw new InputError("evaluation", `evaluation ${name}: ${id} is given twice`);
     asked.set(id, evaluation);
   }

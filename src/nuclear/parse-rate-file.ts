@@ -55,6 +55,11 @@ export class RateFileError extends InputError {
   }
 }
 
+/** Whether a header value is plain to a YAML reader, so that Astropy reads what we read. */
+export function isPlainText(value: string): boolean {
+  return value !== "" && !/: |:$| #|^[[\]{}&*!|>'"%@`,#]|^[-?] |[\r\n]/.test(value);
+}
+
 /** Unit of the rate of k reactants, in Astropy's notation. */
 export function rateUnit(reactantCount: number): string {
   return ["1 / s", "cm3 / (mol s)", "cm6 / (mol2 s)"][reactantCount - 1];
@@ -118,7 +123,7 @@ function readEcsv(file: string, text: string): Parsed {
     if (!match) throw new RateFileError(file, i + 1, "header lines must read `#   key: value`, one line each");
     const [, key, value] = match;
     if (meta.has(key)) throw new RateFileError(file, i + 1, `${key} is given twice`);
-    if (/: | #|^[[\]{}&*!|>'"%@`,?-]/.test(value))
+    if (!isPlainText(value))
       throw new RateFileError(
         file,
         i + 1,

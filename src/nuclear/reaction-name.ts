@@ -139,7 +139,7 @@ export function suggestNearest(name: string, candidates: Iterable<string>): stri
  */
 export function resolveReaction(name: string, known: Iterable<string>, what = "reaction"): string {
   const ids = [...known];
-  let problem = "unknown reaction";
+  let problem = "no such reaction there";
   let wanted = name;
   try {
     wanted = parseReactionName(name);

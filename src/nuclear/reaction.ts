@@ -6,11 +6,11 @@ import { type NuclideTable, nuclideFromText, nuclideNumbers } from "./nuclide.ts
 export interface Reaction {
   /** Target, projectile _ ejectiles, residual, photon as `gamma`: `d-p_gamma-he3`; a decay: `t_he3`. */
   readonly id: string;
-  /** Heaviest first. */
+  /** Target first: the heaviest, but he4 counts as the projectile on d, t, he3. */
   readonly reactants: readonly string[];
   /** Lightest first. */
   readonly products: readonly string[];
-  /** `t + d -> he4 + n`, heaviest first on both sides. */
+  /** `t + d -> he4 + n`: target first, residual first. */
   readonly equation: string;
   /** One reactant: a beta decay, which changes the charge by one. */
   readonly isDecay: boolean;
@@ -22,6 +22,13 @@ export const NEUTRON_PROTON = "n_p";
 function lightFirst(a: string, b: string): number {
   const [x, y] = [nuclideNumbers(a)!, nuclideNumbers(b)!];
   return x.A - y.A || x.Z - y.Z;
+}
+
+/** Target before projectile: the heavier first, but an alpha particle is the projectile on d, t and he3. */
+function targetFirst(reactants: readonly string[]): string[] {
+  const sorted = [...reactants].sort((a, b) => lightFirst(b, a));
+  const alphaOnLighter = sorted.length === 2 && sorted[0] === "he4" && ["d", "t", "he3"].includes(sorted[1]);
+  return alphaOnLighter ? sorted.reverse() : sorted;
 }
 
 /**
@@ -45,7 +52,7 @@ export function makeReaction(reactants: readonly string[], products: readonly st
       throw new InputError("reaction", `${shown}: ${rule} ${before} -> ${after}`);
     }
   }
-  const sortedReactants = [...reactants].sort((a, b) => lightFirst(b, a));
+  const sortedReactants = targetFirst(reactants);
   const sortedProducts = [...products].sort(lightFirst);
   const photon = !isDecay && products.length === 1 ? ["gamma"] : [];
   return {
