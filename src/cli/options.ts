@@ -40,7 +40,7 @@ function accepted(key: string): string {
 }
 
 /**
- * A number written in full: no blanks, no trailing characters, no NaN or infinity.
+ * A number written in full: nothing after it, no NaN or infinity.
  * @throws {InputError} naming the option and what it accepts
  */
 export function strictNumber(text: string, option: string, expected: string): number {

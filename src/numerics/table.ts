@@ -3,7 +3,7 @@
 /** A table as it stands in results, CSV and ECSV. Every row has one cell a column. */
 export interface Table {
   readonly columns: readonly string[];
-  /** Unit of each column in astropy notation; "" for a pure number or a word. */
+  /** Unit of each column in astropy notation; "1" for a pure number, "" for a word. */
   readonly units: readonly string[];
   readonly rows: readonly (readonly (number | string)[])[];
 }

@@ -78,7 +78,7 @@ export function abundancesTable(results: AbundanceResults): Table {
   }
   columns.push("nEffComputed");
   row.push(results.nEffComputed);
-  return { columns, units: columns.map(() => ""), rows: [row] };
+  return { columns, units: columns.map(() => "1"), rows: [row] };
 }
 
 /** What the columns of {@link abundancesTable} mean. */

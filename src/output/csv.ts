@@ -8,7 +8,9 @@ import { delimitedLines } from "./cell.ts";
  * @throws {CalculationError} if a number is not finite or a row is ragged
  */
 export function toCsv(table: Table, notes: readonly string[] = []): string {
-  const units = table.columns.flatMap((name, i) => (table.units[i] === "" ? [] : [`${name} [${table.units[i]}]`]));
+  const units = table.columns.flatMap((name, i) =>
+    ["", "1"].includes(table.units[i]) ? [] : [`${name} [${table.units[i]}]`],
+  );
   const comments = [...notes, ...(units.length > 0 ? [`units: ${units.join(", ")}`] : [])];
   return `${[...comments.map((note) => `# ${note}`), ...delimitedLines(table, ",")].join("\n")}\n`;
 }

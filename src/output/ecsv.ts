@@ -21,7 +21,7 @@ export function toEcsv(
 ): string {
   const columns = table.columns.map((name, i) => {
     const datatype = typeof table.rows[0]?.[i] === "string" ? "string" : "float64";
-    const unit = table.units[i] === "" ? "" : `, unit: ${scalar(table.units[i])}`;
+    const unit = ["", "1"].includes(table.units[i]) ? "" : `, unit: ${scalar(table.units[i])}`;
     const description = describe[name] === undefined ? "" : `, description: ${scalar(describe[name])}`;
     return `# - {name: ${scalar(name)}${unit}, datatype: ${datatype}${description}}`;
   });

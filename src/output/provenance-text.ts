@@ -87,6 +87,13 @@ export function titleLine(title: string, version: string): string {
   return pad(title, TEXT_WIDTH - displayWidth(right)) + right;
 }
 
+/** One line of parameters and program, for the foot of a figure. */
+export function noteLine(answer: Envelope): string {
+  const { cosmology: c, provenance } = answer;
+  const parts = [`ω_b = ${c.omegaB}`, `N_eff = ${formatNumber(c.nEff, 4)}`, `τ_n = ${c.tauN} s`];
+  return `${parts.join(", ")}; network ${provenance.network}; emberline ${answer.version}`;
+}
+
 /** Provenance as short lines, for the comments of CSV and the meta of ECSV. */
 export function provenanceNotes(answer: Envelope): Record<string, string | readonly string[]> {
   const { provenance, cosmology: c } = answer;

@@ -1,6 +1,7 @@
 /** Command `history`: temperatures, expansion, weak rates and every nuclide through the first hours. */
 import { historyFigure } from "../../charts/history.ts";
 import { historyText } from "../../output/history-output.ts";
+import { noteLine } from "../../output/provenance-text.ts";
 import { computeHistory } from "../../requests/history.ts";
 import { answerCommand } from "../answer.ts";
 import type { Options } from "../options.ts";
@@ -10,6 +11,6 @@ export function run(options: Options): Promise<void> {
     compute: computeHistory,
     text: historyText,
     table: (results) => results.table,
-    figure: (answer, name) => historyFigure(answer.results.table, name),
+    figure: (answer, name) => historyFigure(answer.results.table, noteLine(answer), name),
   });
 }

@@ -1,0 +1,49 @@
+/** A figure: one panel, or several on one sheet, each a chart.js configuration with its place. */
+import type { ChartConfiguration } from "chart.js";
+import type { Point } from "./style.ts";
+
+/** Configuration of every chart here. */
+export type LineChart = ChartConfiguration<"line", Point[]>;
+
+/** One chart and the rectangle it fills [px]. */
+export interface Panel {
+  readonly name: string;
+  readonly x: number;
+  readonly y: number;
+  readonly width: number;
+  readonly height: number;
+  readonly chart: LineChart;
+}
+
+/** Everything that goes into one file. Sizes in px of a screen of 96 a inch. */
+export interface Figure {
+  readonly width: number;
+  readonly height: number;
+  /** What it shows, for the metadata of the file. */
+  readonly title: string;
+  /** One line at the foot: parameters and program. */
+  readonly note: string;
+  readonly panels: readonly Panel[];
+}
+
+/** Height kept free for the note [px]. */
+export const NOTE_HEIGHT = 26;
+
+/** A figure of one panel. */
+export function singleFigure(
+  title: string,
+  note: string,
+  name: string,
+  chart: (width: number, height: number) => LineChart,
+  width = 860,
+  height = 580,
+): Figure {
+  const panelHeight = height - NOTE_HEIGHT;
+  return {
+    width,
+    height,
+    title,
+    note,
+    panels: [{ name, x: 0, y: 0, width, height: panelHeight, chart: chart(width, panelHeight) }],
+  };
+}

@@ -1,0 +1,270 @@
+/** The look that all charts share: palette, fonts, axes, titles, and curve labels at the end of the line. */
+import type { ChartConfiguration, ChartDataset } from "chart.js";
+import type { AnnotationOptions } from "chartjs-plugin-annotation";
+
+/** Family name under which the renderer registers its font; a browser falls back to its own sans-serif. */
+export const FONT_FAMILY = "Ember Sans";
+
+/**
+ * Colours that stay apart for every kind of colour vision and fall on different greys.
+ * @see Okabe & Ito 2008, Color Universal Design (from memory), yellow left out: it is too faint for a line on white
+ */
+export const PALETTE = {
+  ink: "#1b1f27",
+  blue: "#0072b2",
+  vermilion: "#d55e00",
+  green: "#009e73",
+  purple: "#a8578a",
+  orange: "#e69f00",
+  sky: "#56b4e9",
+} as const;
+/** Greys of text and lines that are not data. */
+export const MUTED = { text: "#5a6472", axis: "#8b95a3", grid: "#e7eaee", paper: "#ffffff" } as const;
+
+/** Dash patterns, so that curves stay apart without colour. */
+export const DASHES = { solid: [], dashed: [7, 4], dotted: [2, 3], dashDot: [9, 3, 2, 3], long: [14, 5] } as const;
+
+/** Text sizes [px]. */
+export const SIZES = { title: 15, text: 12, label: 12 } as const;
+/** Room that titles and axes take of a panel's height, and that labels take right of the axes [px]. */
+export const MARGINS = { vertical: 118, labels: 58 } as const;
+
+/** A point of a curve; null breaks the line. */
+export interface Point {
+  readonly x: number;
+  readonly y: number | null;
+}
+
+/** A curve with its label. */
+export interface Curve {
+  readonly label: string;
+  readonly color: string;
+  readonly dash?: readonly number[];
+  readonly width?: number;
+  readonly points: readonly Point[];
+  /** Name of the y axis it belongs to; `y` unless the panel has several. */
+  readonly axis?: string;
+}
+
+/** Axes of a panel by name. */
+export type Scales = NonNullable<NonNullable<ChartConfiguration<"line", Point[]>["options"]>["scales"]>;
+
+/** Range of an axis. */
+export interface Range {
+  readonly min: number;
+  readonly max: number;
+}
+
+const RAISED: Readonly<Record<string, string>> = { "-": "⁻" };
+const DIGITS = "⁰¹²³⁴⁵⁶⁷⁸⁹";
+
+/** `10⁻³` for 0.001; 1 and 10 in full. */
+export function powerLabel(value: number): string {
+  const power = Math.round(Math.log10(value));
+  if (power === 0 || power === 1) return String(10 ** power);
+  return `10${[...String(power)].map((c) => RAISED[c] ?? DIGITS[Number(c)]).join("")}`;
+}
+
+/** Smallest range of whole decades that holds all values > 0. */
+export function decades(values: readonly number[]): Range {
+  const positive = values.filter((value) => value > 0);
+  return {
+    min: 10 ** Math.floor(Math.log10(Math.min(...positive))),
+    max: 10 ** Math.ceil(Math.log10(Math.max(...positive))),
+  };
+}
+
+function isPower(value: number, every: number): boolean {
+  const power = Math.log10(value);
+  return Math.abs(power - Math.round(power)) < 1e-9 && Math.round(power) % every === 0;
+}
+
+const axisLine = { border: { color: MUTED.axis, width: 1 } } as const;
+const tickFont = { family: FONT_FAMILY, size: SIZES.text } as const;
+
+function axisTitle(text: string) {
+  return { display: true, text, color: MUTED.text, font: tickFont };
+}
+
+/** Logarithmic axis that labels decades only, every n-th one where there are many. */
+export function logAxis(title: string, range: Range, extra: { readonly reverse?: boolean } = {}) {
+  const every = Math.ceil(Math.log10(range.max / range.min) / 9);
+  return {
+    type: "logarithmic" as const,
+    ...extra,
+    min: range.min,
+    max: range.max,
+    title: axisTitle(title),
+    ...axisLine,
+    grid: { color: MUTED.grid, tickColor: MUTED.axis, tickLength: 5, lineWidth: 1 },
+    afterBuildTicks: (axis: { ticks: { value: number }[] }) => {
+      axis.ticks = axis.ticks.filter((tick) => isPower(tick.value, every));
+    },
+    ticks: {
+      color: MUTED.text,
+      font: tickFont,
+      maxRotation: 0,
+      autoSkip: false,
+      callback: (value: number | string) => (isPower(Number(value), every) ? powerLabel(Number(value)) : ""),
+    },
+  } satisfies Scales[string];
+}
+
+/** Linear axis. */
+export function linearAxis(title: string, range: Range, stepSize: number) {
+  return {
+    type: "linear" as const,
+    min: range.min,
+    max: range.max,
+    title: axisTitle(title),
+    ...axisLine,
+    grid: { color: MUTED.grid, tickColor: MUTED.axis, tickLength: 5, lineWidth: 1 },
+    ticks: { color: MUTED.text, font: tickFont, maxRotation: 0, stepSize },
+  } satisfies Scales[string];
+}
+
+/** Curve as a chart.js data set. */
+export function lineDataset(curve: Curve): ChartDataset<"line", Point[]> {
+  return {
+    label: curve.label,
+    data: [...curve.points],
+    borderColor: curve.color,
+    borderDash: [...(curve.dash ?? DASHES.solid)],
+    borderWidth: curve.width ?? 2,
+    borderJoinStyle: "round",
+    pointRadius: 0,
+    ...(curve.axis === undefined ? {} : { yAxisID: curve.axis }),
+  };
+}
+
+function textAt(x: number, y: number, text: string, color: string, axis: string): AnnotationOptions<"label"> {
+  return {
+    type: "label",
+    xValue: x,
+    yValue: y,
+    yScaleID: axis,
+    content: text,
+    color,
+    font: { family: FONT_FAMILY, size: SIZES.label, weight: "bold" },
+    padding: 0,
+  };
+}
+
+/**
+ * Heights moved apart so that neighbours keep a distance, each as near to its wish as that allows.
+ * @param wishes heights in any unit
+ * @param gap    least distance, same unit
+ * @returns heights in the order of the wishes
+ */
+export function spreadApart(wishes: readonly number[], gap: number): number[] {
+  const order = wishes.map((_, i) => i).sort((a, b) => wishes[a] - wishes[b]);
+  // Groups that touch are pooled; each sits where its members' wishes have their mean.
+  const groups: { members: number[]; start: number }[] = [];
+  const place = (members: number[]) =>
+    members.reduce((sum, member, k) => sum + wishes[member] - k * gap, 0) / members.length;
+  for (const i of order) {
+    let members = [i];
+    let before = groups.at(-1);
+    while (before !== undefined && before.start + before.members.length * gap > place(members)) {
+      members = [...before.members, ...members];
+      groups.pop();
+      before = groups.at(-1);
+    }
+    groups.push({ members, start: place(members) });
+  }
+  const heights = new Array<number>(wishes.length);
+  for (const { members, start } of groups)
+    members.forEach((member, k) => {
+      heights[member] = start + k * gap;
+    });
+  return heights;
+}
+
+/** Where labels stand: axis ranges, and whether the x axis runs from large to small. */
+export interface LabelFrame {
+  readonly x: Range;
+  readonly y: Range;
+  readonly reverse?: boolean;
+  readonly axis?: string;
+  /** Height of the axes [px]. */
+  readonly height: number;
+}
+
+/**
+ * Labels in the colour of their curves: right of the axes where a curve reaches the end, else above its highest point,
+ * or half-way down if it falls from the start.
+ */
+export function curveLabels(curves: readonly Curve[], frame: LabelFrame): Record<string, AnnotationOptions<"label">> {
+  const [start, end] = frame.reverse === true ? [frame.x.max, frame.x.min] : [frame.x.min, frame.x.max];
+  const axis = frame.axis ?? "y";
+  const logHeight = Math.log(frame.y.max / frame.y.min);
+  const fraction = (y: number) => Math.log(y / frame.y.min) / logHeight;
+  const visible = curves.map((curve) => ({
+    curve,
+    points: curve.points.filter((p): p is { x: number; y: number } => p.y !== null && p.y >= frame.y.min),
+  }));
+  const isEnd = (x: number) => Math.abs(Math.log(x / end)) < 0.02 * Math.log(frame.x.max / frame.x.min);
+  const drawn = visible.filter(({ points }) => points.length > 0);
+  const ending = drawn.filter(({ points }) => points.some((p) => isEnd(p.x)));
+  const inner = drawn.filter((item) => !ending.includes(item));
+  const heights = spreadApart(
+    ending.map(({ points }) => fraction(points.filter((p) => isEnd(p.x)).at(-1)!.y)),
+    (SIZES.label + 3) / frame.height,
+  );
+  const labels: Record<string, AnnotationOptions<"label">> = {};
+  ending.forEach(({ curve }, i) => {
+    labels[`label-${curve.label}`] = {
+      ...textAt(end, frame.y.min * Math.exp(heights[i] * logHeight), curve.label, curve.color, axis),
+      position: { x: "start", y: "center" },
+      xAdjust: 7,
+    };
+  });
+  const isStart = (x: number) => Math.abs(Math.log(x / start)) < 0.04 * Math.log(frame.x.max / frame.x.min);
+  for (const { curve, points } of inner) {
+    const top = points.reduce((best, p) => (p.y > best.y ? p : best));
+    const falls = isStart(top.x);
+    const half = frame.y.min * Math.exp((fraction(Math.min(top.y, frame.y.max)) / 2) * logHeight);
+    const { x, y } = falls ? points.findLast((p) => p.y >= half)! : top;
+    labels[`label-${curve.label}`] = {
+      ...textAt(x, y, curve.label, curve.color, axis),
+      position: falls ? { x: "start", y: "center" } : { x: "center", y: "end" },
+      ...(falls ? { xAdjust: 7 } : { yAdjust: -4 }),
+    };
+  }
+  return labels;
+}
+
+/** A panel of curves: title on the left, no legend, since each curve carries its name. */
+export function linePanel(
+  title: string,
+  curves: readonly Curve[],
+  scales: Scales,
+  annotations: Record<string, AnnotationOptions>,
+): ChartConfiguration<"line", Point[]> {
+  return {
+    type: "line",
+    data: { datasets: curves.map(lineDataset) },
+    options: {
+      animation: false,
+      responsive: false,
+      parsing: false,
+      normalized: true,
+      events: [],
+      layout: { padding: { left: 8, right: MARGINS.labels, top: 4, bottom: 4 } },
+      plugins: {
+        legend: { display: false },
+        tooltip: { enabled: false },
+        title: {
+          display: true,
+          text: title,
+          align: "start",
+          color: PALETTE.ink,
+          font: { family: FONT_FAMILY, size: SIZES.title, weight: "bold" },
+          padding: { top: 6, bottom: 12 },
+        },
+        annotation: { clip: false, annotations },
+      },
+      scales,
+    },
+  };
+}
