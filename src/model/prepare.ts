@@ -14,6 +14,7 @@ import { addCounts, prepareRun, type RunContext, type RunInputs, runNetwork } fr
 import { variedTable } from "../nucleosynthesis/vary.ts";
 import { InputError } from "../numerics/check.ts";
 import { type ExpressionFunction, trivialExpression } from "../numerics/expression.ts";
+import { notAKnotSpline } from "../numerics/interpolate.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import {
   type CosmologyParameters,
@@ -23,6 +24,7 @@ import {
 } from "../parameters/cosmology.ts";
 import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
 import { propagateLinearly } from "../uncertainty/propagation.ts";
+import type { WeakOptions } from "../weak/inputs.ts";
 import { tabulateWeakRates, type WeakTable } from "../weak/table.ts";
 
 export interface Estimate {
@@ -115,7 +117,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
       weakMagnetism: !off("finite-mass") && !off("weak-magnetism"),
     };
     const weakKey = JSON.stringify([backgroundKey, switches]);
-    const rates = weak(weakKey, () => tabulateWeakRates(background, p.xiE, switches));
+    const rates = weak(weakKey, () => weakTable(background, p.xiE, switches));
     return prepared(JSON.stringify([networkKey, weakKey]), () => prepareRun(data, background, rates));
   }
 
@@ -193,6 +195,18 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
       });
     },
   };
+}
+
+/** Spacing of the weak table in s = -ln T9: interpolation error below 1e-6. */
+const WEAK_SPACING = 0.05;
+
+function weakTable(history: ThermalHistory, xiE: number, switches: WeakOptions): WeakTable {
+  const { s, TnueOverT } = history;
+  const start = s[0];
+  const end = s[s.length - 1];
+  const ratio = notAKnotSpline(s, TnueOverT);
+  const count = Math.ceil((end - start) / WEAK_SPACING) + 1;
+  return tabulateWeakRates({ start, end, count }, ratio.value, xiE, switches);
 }
 
 /** Keeps the last result for its key. */

@@ -142,9 +142,9 @@ export function compileNetwork(nuclides: readonly string[], reactions: readonly 
     assemble(c, Y, shift, values) {
       for (let i = 0; i < n; i++) padded[i] = Y[i];
       values.fill(0);
-      accumulate(sparse, c, padded, values, -1);
       const { diagonal } = elimination;
-      for (let i = 0; i < n; i++) values[diagonal[i]] += shift;
+      for (let i = 0; i < n; i++) values[diagonal[i]] = shift;
+      accumulate(sparse, c, padded, values, -1);
     },
   };
 }

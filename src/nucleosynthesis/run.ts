@@ -2,13 +2,13 @@
 import type { ThermalHistory } from "../background/history.ts";
 import { mevToT9 } from "../constants/units.ts";
 import { type CompiledNetwork, compileNetwork } from "../network/compile.ts";
-import { factorInPlace, solveInPlace } from "../network/elimination.ts";
+import { generateKernels, loopKernels, type NetworkKernels } from "../network/generate.ts";
 import { lnEquilibriumAbundance } from "../network/nse.ts";
 import { luFactor, luSolve } from "../numerics/linear.ts";
 import { type SolverCounts, type StiffOptions, StiffStepper, type StiffSystem } from "../numerics/ode-stiff.ts";
 import type { WeakTable } from "../weak/table.ts";
-import { networkTable, sampleClock, TABLE_INTERVALS, weakOnlyTable } from "./coefficients.ts";
-import type { FluxTable } from "./flux-table.ts";
+import { type Clock, networkTable, sampleClock, TABLE_INTERVALS, weakOnlyTable } from "./coefficients.ts";
+import { type FluxTable, resample } from "./flux-table.ts";
 import { type NetworkData, WEAK_REACTION } from "./network-data.ts";
 
 /** Temperature where n <-> p starts from its equilibrium [MeV]. */
@@ -24,6 +24,11 @@ export interface RunContext {
   readonly history: ThermalHistory;
   readonly weakTable: FluxTable;
   readonly table: FluxTable;
+  /** Kernels of the network: loops at first, straight-line code once enough runs pay for generating it. */
+  kernels(): NetworkKernels;
+  /** Clock, density and weak rates on the nodes of `table`, for exports. */
+  readonly clock: Clock;
+  readonly weakOnClock: { readonly lnNToP: Float64Array; readonly lnPToN: Float64Array };
   /** ln(n_b/N_A) at eta10 = 1 and T where the network starts. */
   readonly lnRhoNStart: number;
 }
@@ -60,15 +65,48 @@ export function prepareRun(data: NetworkData, history: ThermalHistory, weak: Wea
     history,
     weakTable: weakOnlyTable(sampleClock(history, sWeak, sStart, weakIntervals), weak),
     table: networkTable(data, clock, weak),
+    kernels: kernelsOf(data.compiled),
+    clock,
+    weakOnClock: {
+      lnNToP: resample(weak.s, weak.lnNToP, clock.start, clock.step, clock.count).value,
+      lnPToN: resample(weak.s, weak.lnPToN, clock.start, clock.step, clock.count).value,
+    },
     lnRhoNStart: clock.lnRhoN.value[0],
   };
+}
+
+/** Runs after which generated code has paid for itself, measured: compiling it costs some hundred loop runs. */
+const RUNS_BEFORE_GENERATING = 20;
+
+const kernelCache = new WeakMap<CompiledNetwork, () => NetworkKernels>();
+
+/** Loops for the first runs of a network, generated code afterwards; the numbers are the same to the last bit. */
+export function kernelsOf(network: CompiledNetwork): () => NetworkKernels {
+  const known = kernelCache.get(network);
+  if (known) return known;
+  let kernels = loopKernels(network);
+  let runs = 0;
+  const next = () => {
+    if (runs++ === RUNS_BEFORE_GENERATING) kernels = generateKernels(network) ?? kernels;
+    return kernels;
+  };
+  kernelCache.set(network, next);
+  return next;
 }
 
 /** The network of n <-> p alone. */
 export const WEAK_NETWORK = compileNetwork(["n", "p"], [{ id: WEAK_REACTION, reactants: ["n"], products: ["p"] }]);
 
+/** Its kernels: too small for generated code to pay. */
+export const WEAK_KERNELS = loopKernels(WEAK_NETWORK);
+
 /** A flux table at given eta10, tau_n and factors, as a stiff system in s with sparse linear algebra. */
-export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs: RunInputs): StiffSystem {
+export function networkSystem(
+  network: CompiledNetwork,
+  kernels: NetworkKernels,
+  table: FluxTable,
+  inputs: RunInputs,
+): StiffSystem {
   const fluxes = network.fluxes;
   const scale = new Float64Array(fluxes);
   for (let f = 0; f < fluxes; f++)
@@ -95,7 +133,7 @@ export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs
     n,
     rhs(s, Y, out) {
       load(s);
-      network.derivatives(c, Y, out);
+      kernels.derivatives(c, Y, out);
     },
     timeDerivative(s, Y, out) {
       load(s);
@@ -103,7 +141,7 @@ export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs
       const clock = 1 / Math.sqrt(1 + share);
       const drift = (-0.5 * inputs.eta10 * dc[fluxes]) / (1 + share);
       for (let f = 0; f < fluxes; f++) dc[f] = dc[f] * scale[f] * clock + c[f] * drift;
-      network.derivatives(dc, Y, out);
+      kernels.derivatives(dc, Y, out);
     },
     solver: {
       update(s, Y) {
@@ -113,8 +151,8 @@ export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs
       factor(shift) {
         load(sLast);
         dense = null;
-        network.assemble(c, yLast, shift, values);
-        if (factorInPlace(elimination, values)) return true;
+        kernels.assemble(c, yLast, shift, values);
+        if (kernels.factor(values)) return true;
         // A pivot underflowed: fall back to dense elimination with pivoting.
         const matrix = new Float64Array(n * n);
         network.jacobian(c, yLast, matrix);
@@ -126,22 +164,32 @@ export function networkSystem(network: CompiledNetwork, table: FluxTable, inputs
       },
       solve(b) {
         if (dense) luSolve(dense.matrix, n, dense.pivots, b);
-        else solveInPlace(elimination, values, b);
+        else kernels.solve(values, b);
       },
     },
   };
 }
 
+/** Tolerance below which the fifth-order method is the cheaper one. */
+const FIFTH_ORDER_BELOW = 3e-5;
+
 /** Absolute tolerance of each nuclide: rtol times a floor, so that traces are followed relatively down to it. */
-export function tolerances(data: NetworkData, rtol: number): StiffOptions {
-  return { rtol, atol: new Float64Array(data.nuclides.length).fill(rtol * 1e-15), firstStep: 1e-3, maxSteps: 20000 };
+export function tolerances(data: NetworkData, inputs: RunInputs): StiffOptions {
+  const rtol = inputs.tolerance;
+  return {
+    rtol,
+    atol: new Float64Array(data.nuclides.length).fill(rtol * 1e-15),
+    method: inputs.method ?? (rtol < FIFTH_ORDER_BELOW ? "rodas5p" : "rodas4"),
+    firstStep: 1e-3,
+    maxSteps: 200000,
+  };
 }
 
 /** Abundances at the start of the network: n and p from the weak rates alone, all else in statistical equilibrium. */
 export function initialAbundances(context: RunContext, inputs: RunInputs): { Y: Float64Array; counts: SolverCounts } {
   const { weakTable, data } = context;
   const weakInputs = { ...inputs, factors: inputs.factors?.subarray(0, 1) };
-  const system = networkSystem(WEAK_NETWORK, weakTable, weakInputs);
+  const system = networkSystem(WEAK_NETWORK, WEAK_KERNELS, weakTable, weakInputs);
   const c = new Float64Array(3);
   weakTable.values(weakTable.start, c);
   const Xn = c[1] / (c[0] + c[1]);
@@ -176,11 +224,10 @@ export function initialAbundances(context: RunContext, inputs: RunInputs): { Y: 
 export function runNetwork(context: RunContext, inputs: RunInputs): NuclearRun {
   const start = initialAbundances(context, inputs);
   const table = inputs.table ?? context.table;
-  const system = networkSystem(context.data.compiled, table, inputs);
+  const system = networkSystem(context.data.compiled, context.kernels(), table, inputs);
   const end = table.start + table.step * table.intervals;
   const stepper = new StiffStepper(system, table.start, start.Y, end, {
-    ...tolerances(context.data, inputs.tolerance),
-    method: inputs.method,
+    ...tolerances(context.data, inputs),
   });
   while (!stepper.done) stepper.step();
   return { Y: stepper.y, counts: addCounts(start.counts, stepper.counts) };

@@ -13,6 +13,7 @@ import {
   type RunContext,
   type RunInputs,
   tolerances,
+  WEAK_KERNELS,
   WEAK_NETWORK,
   WEAK_START_MEV,
 } from "./run.ts";
@@ -76,11 +77,17 @@ export function computeTimeline(context: RunContext, inputs: RunInputs): Timelin
   const weakInputs = { ...inputs, factors: inputs.factors?.subarray(0, 1) };
   const first = share(weakTable.start).c;
   const Xn = first[1] / (first[0] + first[1]);
-  const early = new StiffStepper(networkSystem(WEAK_NETWORK, weakTable, weakInputs), s[0], [Xn, 1 - Xn], sStart, {
-    rtol: inputs.tolerance,
-    atol: 1e-30,
-    firstStep: 1e-2,
-  });
+  const early = new StiffStepper(
+    networkSystem(WEAK_NETWORK, WEAK_KERNELS, weakTable, weakInputs),
+    s[0],
+    [Xn, 1 - Xn],
+    sStart,
+    {
+      rtol: inputs.tolerance,
+      atol: 1e-30,
+      firstStep: 1e-2,
+    },
+  );
   const lnHeating = history.heating.map(Math.log);
   const heatingStart = column(lnHeating, sStart);
   let row = 0;
@@ -103,11 +110,10 @@ export function computeTimeline(context: RunContext, inputs: RunInputs): Timelin
     state[index("p")] = early.y[1];
     Y.push(state);
   }
-  const system: StiffSystem = networkSystem(data.compiled, inputs.table ?? table, inputs);
+  const system: StiffSystem = networkSystem(data.compiled, context.kernels(), inputs.table ?? table, inputs);
   const end = table.start + table.step * table.intervals;
   const late = new StiffStepper(system, sStart, initialAbundances(context, inputs).Y, end, {
-    ...tolerances(data, inputs.tolerance),
-    method: inputs.method,
+    ...tolerances(data, inputs),
   });
   for (; row < rows; row++) {
     advance(late, Math.min(s[row], end));

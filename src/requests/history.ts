@@ -1,17 +1,21 @@
 /** The request `history`: the first hours as a table with milestones. */
 import { kelvinToMeV } from "../constants/units.ts";
-import { type Model, scaleFactors, validityWarnings } from "../model/prepare.ts";
+import { scaleFactors, validityWarnings } from "../model/prepare.ts";
+import type { RateLibrary } from "../nuclear/library.ts";
 import { findMilestones } from "../nucleosynthesis/milestones.ts";
 import { computeTimeline } from "../nucleosynthesis/timeline.ts";
+import type { Keys } from "../parameters/cosmology.ts";
 import type { Envelope, HistoryResults } from "./envelope.ts";
 import { makeEnvelope } from "./envelope.ts";
+import { modelFor } from "./model-for.ts";
 import { nucleosynthesisProvenance } from "./provenance.ts";
 
 /**
- * Answers `history` for a prepared model.
+ * Answers `history` .
  * @throws {InputError | CalculationError}
  */
-export function computeHistory(model: Model): Envelope<HistoryResults> {
+export async function computeHistory(keys: Keys, library: RateLibrary): Promise<Envelope<HistoryResults>> {
+  const model = await modelFor(keys, library);
   const p = model.parameters();
   const context = model.context(p);
   const { data, history } = context;
