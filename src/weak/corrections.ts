@@ -1,8 +1,9 @@
 /**
  * Corrections to the Born n <-> p rates: Coulomb, zero-temperature radiative, finite nucleon mass, weak magnetism.
  *
- * Not included, both of order 1e-4 in Y_p: finite-temperature radiative corrections (photon bath, electron mass shift in
- * the weak vertices) and the balance of bremsstrahlung emission and absorption.
+ * Not included, together of order 1e-4 in Y_p: finite-temperature radiative corrections (photon bath, electron mass
+ * shift in the weak vertices) and the balance of bremsstrahlung emission and absorption. Coulomb and radiative factors
+ * multiply the thermal 1/M terms as they stand, which leaves products of relative order alpha T/M (below 1e-4 at 1 MeV).
  * @see Dicus et al. 1982, Phys. Rev. D 26, 2694; Lopez & Turner 1999, Phys. Rev. D 59, 103502;
  *      Brown & Sawyer 2001, Phys. Rev. D 63, 083503
  */

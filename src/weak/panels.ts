@@ -37,21 +37,24 @@ export interface PanelStore {
 /** Empty store. @param points Gauss points in each panel */
 export function createPanelStore(options: WeakOptions, inputs: WeakInputs, points: number): PanelStore {
   const scale = inputs.Q - inputs.electronMass;
-  const kept = new Map<string, Panel>();
-  const get = (segment: Segment, kind: "head" | "body", level: number): Panel => {
-    const key = `${segment} ${kind} ${level}`;
-    let panel = kept.get(key);
-    if (!panel) {
-      const end = scale * 2 ** level;
-      panel = makePanel(segment, kind === "head" ? 0 : end / 2, end, options, inputs, points);
-      kept.set(key, panel);
-    }
+  const emptyMaps = () => ({ neutrino: new Map(), antineutrino: new Map(), positron: new Map() });
+  const heads: Record<Segment, Map<number, Panel>> = emptyMaps();
+  const bodies: Record<Segment, Map<number, Panel>> = emptyMaps();
+  const make = (kept: Map<number, Panel>, segment: Segment, lo: number, hi: number, level: number): Panel => {
+    const panel = makePanel(segment, lo, hi, options, inputs, points);
+    kept.set(level, panel);
     return panel;
   };
   return {
     scale,
-    head: (segment, level) => get(segment, "head", level),
-    body: (segment, level) => get(segment, "body", level),
+    head(segment, level) {
+      const kept = heads[segment];
+      return kept.get(level) ?? make(kept, segment, 0, scale * 2 ** level, level);
+    },
+    body(segment, level) {
+      const kept = bodies[segment];
+      return kept.get(level) ?? make(kept, segment, scale * 2 ** (level - 1), scale * 2 ** level, level);
+    },
   };
 }
 
