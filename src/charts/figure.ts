@@ -5,6 +5,12 @@ import type { Point } from "./style.ts";
 /** Configuration of every chart here. */
 export type LineChart = ChartConfiguration<"line", Point[]>;
 
+/** Milestones that charts of the history mark; see the results of `history`. */
+export interface HistoryMarks {
+  readonly freezeOutTemperature_MeV?: number;
+  readonly tDeuteriumPeak_s?: number;
+}
+
 /** One chart and the rectangle it fills [px]. */
 export interface Panel {
   readonly name: string;

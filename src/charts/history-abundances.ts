@@ -1,8 +1,19 @@
 /** Chart: share of the nucleons in each nuclide, A_i n_i/n_b, against time. */
 import { formatNuclide, nuclideNumbers } from "../nuclear/nuclide.ts";
 import { numericColumn, type Table } from "../numerics/table.ts";
-import type { LineChart } from "./figure.ts";
-import { type Curve, curveLabels, DASHES, linePanel, logAxis, MARGINS, PALETTE, type Range } from "./style.ts";
+import type { HistoryMarks, LineChart } from "./figure.ts";
+import {
+  type Curve,
+  curveLabels,
+  DASHES,
+  linePanel,
+  logAxis,
+  MARGINS,
+  milestoneLine,
+  PALETTE,
+  pointsWithin,
+  type Range,
+} from "./style.ts";
 
 /** Shares below this are not shown: nothing measurable comes of them. */
 const FLOOR = 1e-16;
@@ -27,9 +38,10 @@ const MAIN = ["h1", "he4"];
 /**
  * @param table  result of `history`: columns t_s and Y_<nuclide> = n_i/n_b
  * @param height of the panel [px], for the distance of labels
+ * @param marks  time of the deuterium peak, drawn as a line
  * @throws {RangeError} if a column is missing or names no nuclide
  */
-export function abundancesChart(table: Table, height: number): LineChart {
+export function abundancesChart(table: Table, height: number, marks: HistoryMarks = {}): LineChart {
   const t = numericColumn(table, "t_s");
   const x = { min: Math.max(SHOWN.min, t[0]), max: Math.min(SHOWN.max, t[t.length - 1]) };
   const isotopes = new Map<number, number>();
@@ -39,9 +51,8 @@ export function abundancesChart(table: Table, height: number): LineChart {
     const numbers = nuclideNumbers(id === "h1" ? "p" : id);
     if (numbers === undefined) throw new RangeError(`column ${name}: no such nuclide`);
     const { Z, A } = numbers;
-    const points = numericColumn(table, name).flatMap((Y, i) =>
-      t[i] < x.min * 0.999 || t[i] > x.max * 1.001 ? [] : [{ x: t[i], y: A * Y > FLOOR / 100 ? A * Y : null }],
-    );
+    const shares = numericColumn(table, name).map((Y) => (A * Y > FLOOR / 1e6 ? A * Y : null));
+    const points = pointsWithin(t, shares, x);
     if (!points.some(({ y }) => y !== null && y > FLOOR)) return [];
     const rank = isotopes.get(Z) ?? 0;
     isotopes.set(Z, rank + 1);
@@ -59,7 +70,12 @@ export function abundancesChart(table: Table, height: number): LineChart {
   return linePanel(
     "Nuclides against time",
     curves,
-    { x: logAxis("t [s]", x), y: logAxis("share of the nucleons", y) },
-    curveLabels(curves, { x, y, height: height - MARGINS.vertical }),
+    { x: logAxis("t [s]", x), y: logAxis("share of the nucleons, A n / n_b", y) },
+    {
+      ...(marks.tDeuteriumPeak_s === undefined
+        ? {}
+        : { peak: milestoneLine(marks.tDeuteriumPeak_s, "deuterium peak") }),
+      ...curveLabels(curves, { x, y, height: height - MARGINS.vertical }),
+    },
   );
 }

@@ -27,12 +27,12 @@ export function temperatureChart(table: Table, height: number): LineChart {
     },
   ];
   const ratios: Curve[] = [
-    { label: "ν_e", color: PALETTE.blue, dash: DASHES.dashed, points: line(electron), axis: "yRatio" },
-    { label: "ν_μ, ν_τ", color: PALETTE.green, dash: DASHES.dotted, points: line(muon), axis: "yRatio" },
+    { label: "νe", color: PALETTE.blue, dash: DASHES.dashed, points: line(electron), axis: "yRatio" },
+    { label: "νμ, ντ", color: PALETTE.green, dash: DASHES.dotted, points: line(muon), axis: "yRatio" },
   ];
   const x = { min: t[0], max: t[t.length - 1] };
-  const y = { min: Math.min(...photon), max: Math.max(...photon) };
-  const ratioRange = { min: 0.7, max: 1.01 };
+  const y = { min: Math.min(...photon.map((T, i) => T * electron[i])), max: Math.max(...photon) };
+  const ratioRange = { min: 0.66, max: 1.04 };
   const inner = height - MARGINS.vertical;
   const share = (weight: number) => (inner * weight) / (WEIGHTS.y + WEIGHTS.yRatio);
   return linePanel(
@@ -40,13 +40,12 @@ export function temperatureChart(table: Table, height: number): LineChart {
     [...temperatures, ...ratios],
     {
       x: logAxis("t [s]", x),
-      y: { ...logAxis("T [MeV]", y), stack: "temperature", stackWeight: WEIGHTS.y },
       yRatio: {
-        ...linearAxis("T_ν / T", ratioRange, 0.1),
+        ...linearAxis("Tν / T", ratioRange, 0.1),
         stack: "temperature",
         stackWeight: WEIGHTS.yRatio,
-        offset: true,
       },
+      y: { ...logAxis("T [MeV]", y), stack: "temperature", stackWeight: WEIGHTS.y },
     },
     {
       ...curveLabels(temperatures, { x, y, height: share(WEIGHTS.y) }),

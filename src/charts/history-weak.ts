@@ -1,8 +1,19 @@
 /** Chart: weak rates and expansion rate against temperature, and the neutron-to-proton ratio below. */
 import { NEUTRON_PROTON_MASS_DIFFERENCE } from "../constants/codata.ts";
 import { numericColumn, type Table } from "../numerics/table.ts";
-import type { LineChart } from "./figure.ts";
-import { type Curve, curveLabels, DASHES, linePanel, logAxis, MARGINS, PALETTE, type Range } from "./style.ts";
+import type { HistoryMarks, LineChart } from "./figure.ts";
+import {
+  type Curve,
+  curveLabels,
+  DASHES,
+  linePanel,
+  logAxis,
+  MARGINS,
+  milestoneLine,
+  PALETTE,
+  pointsWithin,
+  type Range,
+} from "./style.ts";
 
 /** Shares of the height: rates, ratio. */
 const WEIGHTS = { y: 4, yRatio: 3 } as const;
@@ -12,19 +23,17 @@ const SHOWN: Range = { min: 0.03, max: 10 };
 /**
  * @param table  result of `history`: columns T_MeV, H_per_s, n_to_p_per_s, p_to_n_per_s, Y_n, Y_h1
  * @param height of the panel [px], for the distance of labels
+ * @param marks  freeze-out temperature, drawn as a line
  * @throws {RangeError} if a column is missing
  */
-export function weakChart(table: Table, height: number): LineChart {
+export function weakChart(table: Table, height: number, marks: HistoryMarks = {}): LineChart {
   const T = numericColumn(table, "T_MeV");
   const neutrons = numericColumn(table, "Y_n");
   const protons = numericColumn(table, "Y_h1");
   const xRange = { min: SHOWN.min, max: Math.min(SHOWN.max, Math.max(...T)) };
   const yRange = { min: 1e-4, max: 1e4 };
-  const ratioRange = { min: 1e-2, max: 1 };
-  const line = (ys: readonly number[]) =>
-    T.flatMap((x, i) =>
-      x >= xRange.min * 0.999 && x <= xRange.max * 1.001 ? [{ x, y: ys[i] > 0 ? ys[i] : null }] : [],
-    );
+  const ratioRange = { min: 1e-2, max: 0.98 };
+  const line = (ys: readonly number[]) => pointsWithin(T, ys, xRange);
   const rates: Curve[] = [
     { label: "n → p", color: PALETTE.blue, points: line(numericColumn(table, "n_to_p_per_s")) },
     { label: "p → n", color: PALETTE.green, dash: DASHES.dashed, points: line(numericColumn(table, "p_to_n_per_s")) },
@@ -47,10 +56,13 @@ export function weakChart(table: Table, height: number): LineChart {
     [...rates, ...ratios],
     {
       x: logAxis("T [MeV], time runs to the right", xRange, { reverse: true }),
+      yRatio: { ...logAxis("n/p", ratioRange), stack: "weak", stackWeight: WEIGHTS.yRatio },
       y: { ...logAxis("rate [1/s]", yRange), stack: "weak", stackWeight: WEIGHTS.y },
-      yRatio: { ...logAxis("n/p", ratioRange), stack: "weak", stackWeight: WEIGHTS.yRatio, offset: true },
     },
     {
+      ...(marks.freezeOutTemperature_MeV === undefined
+        ? {}
+        : { freezeOut: milestoneLine(marks.freezeOutTemperature_MeV, "weak freeze-out") }),
       ...curveLabels(rates, { ...frame, y: yRange, height: share(WEIGHTS.y) }),
       ...curveLabels(ratios, { ...frame, y: ratioRange, height: share(WEIGHTS.yRatio), axis: "yRatio" }),
     },

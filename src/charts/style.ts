@@ -7,7 +7,7 @@ export const FONT_FAMILY = "Ember Sans";
 
 /**
  * Colours that stay apart for every kind of colour vision and fall on different greys.
- * @see Okabe & Ito 2008, Color Universal Design (from memory), yellow left out: it is too faint for a line on white
+ * @see Okabe & Ito 2008, Color Universal Design (from memory); yellow left out, orange and sky a little darker, for thin lines on white
  */
 export const PALETTE = {
   ink: "#1b1f27",
@@ -15,8 +15,8 @@ export const PALETTE = {
   vermilion: "#d55e00",
   green: "#009e73",
   purple: "#a8578a",
-  orange: "#e69f00",
-  sky: "#56b4e9",
+  orange: "#dd9500",
+  sky: "#48a9e0",
 } as const;
 /** Greys of text and lines that are not data. */
 export const MUTED = { text: "#5a6472", axis: "#8b95a3", grid: "#e7eaee", paper: "#ffffff" } as const;
@@ -26,8 +26,8 @@ export const DASHES = { solid: [], dashed: [7, 4], dotted: [2, 3], dashDot: [9, 
 
 /** Text sizes [px]. */
 export const SIZES = { title: 15, text: 12, label: 12 } as const;
-/** Room that titles and axes take of a panel's height, and that labels take right of the axes [px]. */
-export const MARGINS = { vertical: 118, labels: 58 } as const;
+/** Room that titles and axes take of a panel's height, and one letter of a label right of the axes [px]. */
+export const MARGINS = { vertical: 118, letter: 7.6 } as const;
 
 /** A point of a curve; null breaks the line. */
 export interface Point {
@@ -119,8 +119,22 @@ export function linearAxis(title: string, range: Range, stepSize: number) {
     title: axisTitle(title),
     ...axisLine,
     grid: { color: MUTED.grid, tickColor: MUTED.axis, tickLength: 5, lineWidth: 1 },
-    ticks: { color: MUTED.text, font: tickFont, maxRotation: 0, stepSize },
+    ticks: { color: MUTED.text, font: tickFont, maxRotation: 0, stepSize, includeBounds: false },
   } satisfies Scales[string];
+}
+
+/**
+ * Points of a curve inside a range and one more on either side, so that it runs to the edges.
+ * @param xs monotonic, rising or falling
+ * @param ys null or not positive: a gap
+ */
+export function pointsWithin(xs: readonly number[], ys: readonly (number | null)[], range: Range): Point[] {
+  const inside = (i: number) => xs[i] >= range.min && xs[i] <= range.max;
+  return xs.flatMap((x, i) => {
+    if (!inside(i) && !inside(i - 1) && !inside(i + 1)) return [];
+    const y = ys[i];
+    return [{ x, y: y !== null && y > 0 ? y : null }];
+  });
 }
 
 /** Curve as a chart.js data set. */
@@ -133,7 +147,7 @@ export function lineDataset(curve: Curve): ChartDataset<"line", Point[]> {
     borderWidth: curve.width ?? 2,
     borderJoinStyle: "round",
     pointRadius: 0,
-    ...(curve.axis === undefined ? {} : { yAxisID: curve.axis }),
+    yAxisID: curve.axis ?? "y",
   };
 }
 
@@ -147,6 +161,32 @@ function textAt(x: number, y: number, text: string, color: string, axis: string)
     color,
     font: { family: FONT_FAMILY, size: SIZES.label, weight: "bold" },
     padding: 0,
+    textStrokeColor: MUTED.paper,
+    textStrokeWidth: 3,
+  };
+}
+
+/** A thin upright line with its name above the axes: a milestone. */
+export function milestoneLine(x: number, text: string): AnnotationOptions<"line"> {
+  return {
+    type: "line",
+    scaleID: "x",
+    value: x,
+    borderColor: MUTED.axis,
+    borderWidth: 1,
+    borderDash: [...DASHES.dotted],
+    drawTime: "beforeDatasetsDraw",
+    label: {
+      display: true,
+      drawTime: "afterDatasetsDraw",
+      content: text,
+      position: "start",
+      yAdjust: -16,
+      color: MUTED.text,
+      backgroundColor: "transparent",
+      font: { family: FONT_FAMILY, size: SIZES.label - 1, weight: "normal" },
+      padding: 2,
+    },
   };
 }
 
@@ -180,6 +220,9 @@ export function spreadApart(wishes: readonly number[], gap: number): number[] {
   return heights;
 }
 
+/** Height at which a curve that falls from the start is labelled, as a share of its own. */
+const LOW = 0.22;
+
 /** Where labels stand: axis ranges, and whether the x axis runs from large to small. */
 export interface LabelFrame {
   readonly x: Range;
@@ -192,7 +235,7 @@ export interface LabelFrame {
 
 /**
  * Labels in the colour of their curves: right of the axes where a curve reaches the end, else above its highest point,
- * or half-way down if it falls from the start.
+ * or near its foot if it falls from the start.
  */
 export function curveLabels(curves: readonly Curve[], frame: LabelFrame): Record<string, AnnotationOptions<"label">> {
   const [start, end] = frame.reverse === true ? [frame.x.max, frame.x.min] : [frame.x.min, frame.x.max];
@@ -201,7 +244,10 @@ export function curveLabels(curves: readonly Curve[], frame: LabelFrame): Record
   const fraction = (y: number) => Math.log(y / frame.y.min) / logHeight;
   const visible = curves.map((curve) => ({
     curve,
-    points: curve.points.filter((p): p is { x: number; y: number } => p.y !== null && p.y >= frame.y.min),
+    points: curve.points.filter(
+      (p): p is { x: number; y: number } =>
+        p.y !== null && p.y >= frame.y.min && p.x >= frame.x.min && p.x <= frame.x.max,
+    ),
   }));
   const isEnd = (x: number) => Math.abs(Math.log(x / end)) < 0.02 * Math.log(frame.x.max / frame.x.min);
   const drawn = visible.filter(({ points }) => points.length > 0);
@@ -223,8 +269,8 @@ export function curveLabels(curves: readonly Curve[], frame: LabelFrame): Record
   for (const { curve, points } of inner) {
     const top = points.reduce((best, p) => (p.y > best.y ? p : best));
     const falls = isStart(top.x);
-    const half = frame.y.min * Math.exp((fraction(Math.min(top.y, frame.y.max)) / 2) * logHeight);
-    const { x, y } = falls ? points.findLast((p) => p.y >= half)! : top;
+    const low = frame.y.min * Math.exp(LOW * fraction(Math.min(top.y, frame.y.max)) * logHeight);
+    const { x, y } = falls ? points.findLast((p) => p.y >= low)! : top;
     labels[`label-${curve.label}`] = {
       ...textAt(x, y, curve.label, curve.color, axis),
       position: falls ? { x: "start", y: "center" } : { x: "center", y: "end" },
@@ -241,6 +287,7 @@ export function linePanel(
   scales: Scales,
   annotations: Record<string, AnnotationOptions>,
 ): ChartConfiguration<"line", Point[]> {
+  const longest = Math.max(...curves.map((curve) => curve.label.length));
   return {
     type: "line",
     data: { datasets: curves.map(lineDataset) },
@@ -250,7 +297,7 @@ export function linePanel(
       parsing: false,
       normalized: true,
       events: [],
-      layout: { padding: { left: 8, right: MARGINS.labels, top: 4, bottom: 4 } },
+      layout: { padding: { left: 8, right: 16 + MARGINS.letter * longest, top: 4, bottom: 4 } },
       plugins: {
         legend: { display: false },
         tooltip: { enabled: false },
