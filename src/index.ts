@@ -1,0 +1,64 @@
+/** The public names, in the order in which the calculation runs; everything here works in a browser too. */
+
+// constants, numerics
+
+export type { Constant } from "./constants/constant.ts";
+export { CalculationError, EmberlineError, InputError } from "./numerics/check.ts";
+export type { SolverCounts } from "./numerics/ode-stiff.ts";
+export { numericColumn, type Table } from "./numerics/table.ts";
+
+// nuclear, parameters
+
+export { buildLibrary, type LibraryFiles, overlay, type RateLibrary } from "./nuclear/library.ts";
+export { formatReaction, parseReactionName } from "./nuclear/reaction-name.ts";
+export {
+  type CosmologyParameters,
+  DEFAULTS,
+  eta10PerOmegaB,
+  type Keys,
+  type Measured,
+  NUCLEOSYNTHESIS_CORRECTIONS,
+  RANGES,
+  resolveParameters,
+} from "./parameters/cosmology.ts";
+
+// background, weak, nucleosynthesis
+
+export { type BackgroundOptions, computeThermalHistory, type ThermalHistory } from "./background/history.ts";
+export {
+  ABUNDANCE_NAMES,
+  type AbundanceName,
+  DEFINITIONS,
+  HEAVY_ABUNDANCE_NAMES,
+} from "./nucleosynthesis/abundances.ts";
+export { tabulateWeakRates, type WeakTable } from "./weak/table.ts";
+
+// model: prepared once, asked often
+
+export type { AbundanceRun, Estimate, Model } from "./model/prepare.ts";
+
+// output, charts
+
+export type { Figure, LineChart, Panel } from "./charts/figure.ts";
+export { historyFigure } from "./charts/history.ts";
+export { abundancesTable, abundancesText } from "./output/abundances-output.ts";
+export { toCsv } from "./output/csv.ts";
+export { toEcsv } from "./output/ecsv.ts";
+export { historyText } from "./output/history-output.ts";
+export { toJson } from "./output/json.ts";
+
+// requests: one function a command
+
+export { computeAbundances } from "./requests/abundances.ts";
+export type {
+  AbundanceResults,
+  Envelope,
+  HistoryResults,
+  Milestones,
+  Progress,
+  Provenance,
+} from "./requests/envelope.ts";
+export { computeHistory } from "./requests/history.ts";
+export { modelFor as prepare } from "./requests/model-for.ts";
+
+export { VERSION } from "./version.ts";

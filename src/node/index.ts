@@ -1,0 +1,46 @@
+/** The library on Node: the public names of the browser library, with rates/ read from disk and charts as files. */
+import type { Figure } from "../charts/figure.ts";
+import type { Model } from "../model/prepare.ts";
+import type { Keys } from "../parameters/cosmology.ts";
+import { computeAbundances } from "../requests/abundances.ts";
+import type { AbundanceResults, Envelope, HistoryResults } from "../requests/envelope.ts";
+import { computeHistory } from "../requests/history.ts";
+import { modelFor } from "../requests/model-for.ts";
+import { loadRates } from "./load-rates.ts";
+
+export * from "../index.ts";
+export { loadRates } from "./load-rates.ts";
+export { writeWhole } from "./write-file.ts";
+
+/** Where the rates come from: the folder rates/ of this package unless another is laid over it. */
+export interface RatesOption {
+  /** A folder laid out as rates/, whole or holding only the files that differ. */
+  readonly rates?: string;
+}
+
+/**
+ * A model that keeps what does not depend on the keys that change: `model.abundances({ omegaB: 0.0223 })`.
+ * @param keys defaults of every later call
+ * @throws {InputError} for keys out of range, an unknown network, reaction or evaluation, or a damaged rate file
+ */
+export async function prepare(keys: Keys = {}, { rates }: RatesOption = {}): Promise<Model> {
+  return modelFor(keys, loadRates(rates));
+}
+
+/** The answer of the command `abundances`. @throws {InputError | CalculationError} */
+export async function abundances(keys: Keys = {}, { rates }: RatesOption = {}): Promise<Envelope<AbundanceResults>> {
+  return computeAbundances(keys, loadRates(rates));
+}
+
+/** The answer of the command `history`. @throws {InputError | CalculationError} */
+export async function history(keys: Keys = {}, { rates }: RatesOption = {}): Promise<Envelope<HistoryResults>> {
+  return computeHistory(keys, loadRates(rates));
+}
+
+/**
+ * A figure as the content of a file, png, svg or pdf by the ending of its name; the canvas is loaded at the first call.
+ * @throws {InputError} for another ending
+ */
+export async function renderFigure(figure: Figure, file: string): Promise<Buffer> {
+  return (await import("./render-chart.ts")).renderFigure(figure, file);
+}
