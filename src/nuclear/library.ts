@@ -117,7 +117,8 @@ export function buildLibrary(source: ReadonlyMap<string, string> | LibraryFiles)
     return files
       .list(reaction)
       .filter((name) => name.endsWith(RATE_ENDING))
-      .map((name) => name.slice(0, -RATE_ENDING.length));
+      .map((name) => name.slice(0, -RATE_ENDING.length))
+      .sort();
   };
   return {
     files,

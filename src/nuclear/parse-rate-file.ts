@@ -331,7 +331,6 @@ function checkTableRows(file: string, rows: readonly Row[], tableT9: readonly [n
     if (!(fU >= 1)) throw new RateFileError(file, at, `f_u = ${fU}: a factor uncertainty is at least 1`);
     previous = T9;
   }
-  if (rows.length < 4) throw new RateFileError(file, rows[0].line, `${rows.length} rows: a table needs at least 4`);
   const [first, last] = [rows[0].values[0], rows[rows.length - 1].values[0]];
   if (first !== tableT9[0] || last !== tableT9[1])
     throw new RateFileError(
@@ -339,4 +338,5 @@ function checkTableRows(file: string, rows: readonly Row[], tableT9: readonly [n
       line,
       `table_T9 = ${tableT9.join(" ")}, but the rows span ${first} to ${last}: truncated?`,
     );
+  if (rows.length < 4) throw new RateFileError(file, rows[0].line, `${rows.length} rows: a table needs at least 4`);
 }

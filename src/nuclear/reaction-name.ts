@@ -96,6 +96,14 @@ export function formatReaction(id: string): string {
   return `${formatNuclide(reactants[0])}(${joined(reactants.slice(1))},${out})${residual}`;
 }
 
+/** The notation as typed on a keyboard: `d(p,g)he3`. */
+function plainNotation(id: string): string {
+  if (id === NEUTRON_PROTON) return id;
+  const { reactants, products } = parseReactionId(id);
+  const out = products.length === 1 ? "g" : products.slice(0, -1).join("");
+  return `${reactants[0]}(${reactants.slice(1).join("").replace("he4", "a")},${out.replaceAll("he4", "a")})${products.at(-1)}`;
+}
+
 /** Number of insertions, deletions, replacements and swaps of neighbours that turn a into b. */
 function editDistance(a: string, b: string): number {
   let before: number[] = [];
@@ -158,9 +166,10 @@ export function resolveReaction(name: string, known: Iterable<string>, what = "r
     if (error.message.includes("is the reverse of")) throw error;
     problem = error.message.startsWith(name) ? error.message.slice(name.length).replace(/^:\s*/, "") : error.message;
   }
-  const nearest = suggestNearest(wanted, ids);
+  const written = new Map(ids.map((id) => [wanted.includes("(") ? plainNotation(id) : id, id]));
+  const nearest = suggestNearest(wanted, written.keys());
   const hint = nearest
-    ? `did you mean ${nearest}?`
+    ? `did you mean ${written.get(nearest)}?`
     : `known are ${ids.slice(0, 12).join(" ")}${ids.length > 12 ? " ..." : ""}`;
   throw new InputError("reaction", `${what} ${name}: ${problem}; ${hint}`);
 }
