@@ -1,7 +1,8 @@
 /** Rate file as text: the writer that belongs to parse-rate-file.ts. */
 import { InputError } from "../numerics/check.ts";
-import { type BASES, isPlainText, type RATE_KINDS, rateUnit, type UNCERTAINTY_BASES } from "./parse-rate-file.ts";
+import { type BASES, type RATE_KINDS, rateUnit, type UNCERTAINTY_BASES } from "./parse-rate-file.ts";
 import { parseEquation } from "./reaction.ts";
+import { isPlainText } from "./read-ecsv.ts";
 
 /** Content of a rate file. Numbers are strings, so that printed digits survive. */
 export interface RateFileContent {

@@ -6,7 +6,8 @@ import { type CsvRow, parseCsv } from "../nuclear/csv-rows.ts";
 import { NUCLIDE_COLUMNS, type NuclideTable, parseNuclides } from "../nuclear/nuclide.ts";
 import { makeReaction, parseEquation, parseReactionId, qValueMeV, type Reaction } from "../nuclear/reaction.ts";
 import { formatRateFile, type RateFileContent } from "../nuclear/write-rate-file.ts";
-import { ASSUMED, compilationProvenance, EVALUATED, LABELS } from "./rate-sources.ts";
+import { compilationProvenance, LABELS } from "./rate-labels.ts";
+import { ASSUMED, EVALUATED } from "./rate-sources.ts";
 
 const ENTERED = "2026-12-01; digits copied by src/scripts/make-rates.ts";
 const COEFFICIENTS = ["a0", "a1", "a2", "a3", "a4", "a5", "a6"];
