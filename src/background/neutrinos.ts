@@ -2,7 +2,7 @@
 import { ELECTRON_MASS } from "../constants/codata.ts";
 import { FERMI_CONSTANT, NEUTRINO_COUPLINGS } from "../constants/particle.ts";
 import { HBAR_MEV_S } from "../constants/units.ts";
-import { interpolatedExchange } from "./exchange.ts";
+import { type ExchangeIntegrals, interpolatedExchange } from "./exchange.ts";
 import { type GridTable, tabulateOverTemperature } from "./plasma.ts";
 
 /** rho_nu/rho_gamma of one massless flavour at T_nu/T_gamma = (4/11)^(1/3): 7/8 (4/11)^(4/3). */
@@ -36,14 +36,16 @@ const MASSLESS = interpolatedExchange(0);
 const NU_NU_ANNIHILATION = (GF ** 2 / Math.PI ** 5 / HBAR_MEV_S) * (MASSLESS.A1 / 72);
 const NU_NU_SCATTERING = (GF ** 2 / Math.PI ** 5 / HBAR_MEV_S) * (MASSLESS.S1 / 8);
 
-/** Weights of the annihilation and the scattering term for one flavour: (gL^2 + gR^2) A1 + gL gR A2 and the like. */
-function coupled(x: number, { left, right }: { readonly left: number; readonly right: number }) {
-  const { A1, A2, S1, S2 } = interpolatedExchange(x);
-  const squares = left * left + right * right;
-  return {
-    annihilation: squares * A1 + left * right * A2,
-    scattering: squares * S1 - 2 * left * right * S2,
-  };
+type Couplings = { readonly left: number; readonly right: number };
+
+/** (gL^2 + gR^2) A1 + gL gR A2: the annihilation bracket of one flavour. */
+function annihilationWeight({ left, right }: Couplings, { A1, A2 }: ExchangeIntegrals): number {
+  return (left * left + right * right) * A1 + left * right * A2;
+}
+
+/** (gL^2 + gR^2) S1 - 2 gL gR S2: the scattering bracket of one flavour. */
+function scatteringWeight({ left, right }: Couplings, { S1, S2 }: ExchangeIntegrals): number {
+  return (left * left + right * right) * S1 - 2 * left * right * S2;
 }
 
 let table: GridTable | undefined;
@@ -51,13 +53,12 @@ let table: GridTable | undefined;
 /** Annihilation and scattering weights of nu_e, then of nu_mu (= nu_tau), over ln T of the photons; once a process. */
 export function exchangeWeights(): GridTable {
   table ??= tabulateOverTemperature(4, (TMeV, out) => {
-    const x = ELECTRON_MASS.value / TMeV;
-    const electron = coupled(x, NEUTRINO_COUPLINGS.electron);
-    const muTau = coupled(x, NEUTRINO_COUPLINGS.muTau);
-    out[0] = electron.annihilation;
-    out[1] = electron.scattering;
-    out[2] = muTau.annihilation;
-    out[3] = muTau.scattering;
+    const integrals = interpolatedExchange(ELECTRON_MASS.value / TMeV);
+    const { electron, muTau } = NEUTRINO_COUPLINGS;
+    out[0] = annihilationWeight(electron, integrals);
+    out[1] = scatteringWeight(electron, integrals);
+    out[2] = annihilationWeight(muTau, integrals);
+    out[3] = scatteringWeight(muTau, integrals);
   });
   return table;
 }

@@ -1,9 +1,8 @@
 /** The electromagnetic plasma: photons and e+- by exact Fermi-Dirac integrals, QED terms, and a table of their sum. */
 import { ELECTRON_MASS } from "../constants/codata.ts";
-import { requirePositive, requireRange } from "../numerics/check.ts";
+import { requirePositive } from "../numerics/check.ts";
 import { hermite, notAKnotSlopes } from "../numerics/interpolate.ts";
-import { gaussLegendre } from "../numerics/quadrature.ts";
-import { qedSecondOrder, qedThirdOrder, type Thermodynamics } from "./qed.ts";
+import { ENERGY_POINTS, qedTerms, type Thermodynamics } from "./qed.ts";
 
 export type { Thermodynamics } from "./qed.ts";
 
@@ -12,10 +11,6 @@ export interface QedTerms {
   readonly qedE2: boolean;
   readonly qedE3: boolean;
 }
-
-/** Kinetic energy, in T, beyond which the Fermi-Dirac function vanishes (e^-50). */
-const KINETIC_RANGE = 50;
-const POINTS = 120;
 
 /**
  * Photons: rho = (pi^2/15) T^4, P = rho/3.
@@ -36,22 +31,19 @@ export function photons(TMeV: number): Thermodynamics {
 export function electronPositron(TMeV: number): Thermodynamics {
   requirePositive("TMeV", TMeV, "MeV");
   const x = ELECTRON_MASS.value / TMeV;
-  const { nodes, weights } = gaussLegendre(POINTS);
-  const half = Math.sqrt(KINETIC_RANGE) / 2;
+  const { v, kinetic, boltzmann, weight } = ENERGY_POINTS;
   const threshold = Math.exp(-x);
   let P = 0;
   let rho = 0;
   let dRho = 0;
-  for (let i = 0; i < POINTS; i++) {
-    const v = half * (1 + nodes[i]);
-    const u = x + v * v;
-    const p = v * Math.sqrt(2 * x + v * v);
-    const e = Math.exp(-v * v);
-    const f = e / (1 + threshold * e); // e^x times the occupation
-    const measure = 2 * v * half * weights[i] * p * f; // p dE f
+  for (let i = 0; i < v.length; i++) {
+    const u = x + kinetic[i];
+    const p = v[i] * Math.sqrt(2 * x + kinetic[i]);
+    const blocking = 1 + threshold * boltzmann[i];
+    const measure = (weight[i] * p * boltzmann[i]) / blocking; // p f dE, f without e^-x
     P += (measure * p * p) / 3;
     rho += measure * u * u;
-    dRho += (measure * u ** 3) / (1 + threshold * e); // d f/d ln T = u f (1 - f)
+    dRho += (measure * u * u * u) / blocking; // d f/d ln T = u f (1 - f)
   }
   const factor = (2 / Math.PI ** 2) * threshold * TMeV ** 4;
   return { P: factor * P, rho: factor * rho, dRhoDLnT: factor * dRho };
@@ -64,8 +56,11 @@ export function electronPositron(TMeV: number): Thermodynamics {
  */
 export function plasma(TMeV: number, terms: QedTerms): Thermodynamics {
   const parts = [photons(TMeV), electronPositron(TMeV)];
-  if (terms.qedE2) parts.push(qedSecondOrder(TMeV, ELECTRON_MASS.value));
-  if (terms.qedE3) parts.push(qedThirdOrder(TMeV, ELECTRON_MASS.value));
+  if (terms.qedE2 || terms.qedE3) {
+    const { second, third } = qedTerms(TMeV, ELECTRON_MASS.value);
+    if (terms.qedE2) parts.push(second);
+    if (terms.qedE3) parts.push(third);
+  }
   const sum = (key: keyof Thermodynamics) => parts.reduce((s, part) => s + part[key], 0);
   return { P: sum("P"), rho: sum("rho"), dRhoDLnT: sum("dRhoDLnT") };
 }
@@ -75,11 +70,21 @@ export function entropyDensity(TMeV: number, state: Thermodynamics): number {
   return (state.rho + state.P) / TMeV;
 }
 
+/** Effective number of relativistic degrees of freedom, g_* = (30/pi^2) rho/T^4. @param rho energy density [MeV4] */
+export function energyDegreesOfFreedom(rho: number, TMeV: number): number {
+  return ((30 / Math.PI ** 2) * rho) / TMeV ** 4;
+}
+
+/** Effective number of entropy degrees of freedom, g_*s = (45/2 pi^2) s/T^3. @param s entropy density [MeV3] */
+export function entropyDegreesOfFreedom(s: number, TMeV: number): number {
+  return ((45 / (2 * Math.PI ** 2)) * s) / TMeV ** 3;
+}
+
 /** Range and spacing of the tables over ln T: 1.1 GeV (no muons in it) down to m_e/T = 60, where only photons are left. */
 export const PLASMA_GRID = {
   lnTMin: Math.log(ELECTRON_MASS.value / 60),
   lnTMax: Math.log(1100),
-  points: 801,
+  points: 1601,
 } as const;
 
 const GRID_STEP = (PLASMA_GRID.lnTMax - PLASMA_GRID.lnTMin) / (PLASMA_GRID.points - 1);
@@ -148,9 +153,4 @@ export function plasmaTable(terms: QedTerms): GridTable {
     tables.set(key, table);
   }
   return table;
-}
-
-/** @throws {InputError} unless TMeV lies within the tables: above the e+- range all is photons, so 1e-6 ... 1100 MeV */
-export function requireTemperature(name: string, TMeV: number): void {
-  requireRange(name, TMeV, "MeV", 1e-6, Math.exp(PLASMA_GRID.lnTMax));
 }

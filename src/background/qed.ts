@@ -17,13 +17,26 @@ const E2 = 4 * Math.PI * FINE_STRUCTURE.value;
 /** Above this m_e/T every term is below e^-100 of the photons and is returned as zero. */
 const VANISHING_X = 100;
 const NOTHING: Thermodynamics = { P: 0, rho: 0, dRhoDLnT: 0 };
-/** Kinetic energy, in T, beyond which the Fermi-Dirac function vanishes. */
+/** Kinetic energy, in T, beyond which the Fermi-Dirac function vanishes (e^-50). */
 const KINETIC_RANGE = 50;
-const POINTS = 120;
 
-/** N = 2/(e^u + 1) at u = E/T and its first two derivatives with respect to ln T, written to `out`. */
-function occupation(u: number, out: Float64Array): void {
-  const e = Math.exp(-u);
+/** Gauss points of integrals over the energy E = m + T v^2, a substitution that removes the square-root end point. */
+export const ENERGY_POINTS = (() => {
+  const { nodes, weights } = gaussLegendre(120);
+  const half = Math.sqrt(KINETIC_RANGE) / 2;
+  const v = nodes.map((y) => half * (1 + y));
+  return {
+    v,
+    /** Kinetic energy over T. */
+    kinetic: v.map((w) => w * w),
+    boltzmann: v.map((w) => Math.exp(-w * w)),
+    /** Weight of dE/T = 2 v dv. */
+    weight: weights.map((w, i) => 2 * half * w * v[i]),
+  };
+})();
+
+/** N = 2/(e^u + 1) at u = E/T with e = e^-u, and its first two derivatives with respect to ln T, written to `out`. */
+function occupation(u: number, e: number, out: Float64Array): void {
   const f = e / (1 + e);
   const w = f / (1 + e); // f (1 - f)
   out[0] = 2 * f;
@@ -34,24 +47,19 @@ function occupation(u: number, out: Float64Array): void {
 /** [F, dF/dlnT, d2F/dlnT2] of an integral of N over the energy. */
 type Derivatives = [number, number, number];
 
-/**
- * I1 = int p^2/E N dp and J = int (p^2 + E^2)/E N dp, in units of T^2, with their ln T derivatives at fixed mass;
- * E = m + T v^2 removes the square-root end point.
- */
+/** I1 = int p^2/E N dp and J = int (p^2 + E^2)/E N dp, in units of T^2, with their ln T derivatives at fixed mass. */
 function momentumIntegrals(x: number): { I1: Derivatives; J: Derivatives } {
-  const { nodes, weights } = gaussLegendre(POINTS);
-  const half = Math.sqrt(KINETIC_RANGE) / 2;
+  const { v, kinetic, boltzmann, weight } = ENERGY_POINTS;
+  const threshold = Math.exp(-x);
   const I1: Derivatives = [0, 0, 0];
   const J: Derivatives = [0, 0, 0];
   const N = new Float64Array(3);
-  for (let i = 0; i < POINTS; i++) {
-    const v = half * (1 + nodes[i]);
-    const root = Math.sqrt(2 * x + v * v); // p/T = v root
-    const u = x + v * v;
-    occupation(u, N);
-    const measure = 2 * half * weights[i]; // dE/T = 2 v dv
-    const ofI1 = measure * v * v * root;
-    const ofJ = (measure * (v * v * root * root + u * u)) / root;
+  for (let i = 0; i < v.length; i++) {
+    const u = x + kinetic[i];
+    const p = v[i] * Math.sqrt(2 * x + kinetic[i]);
+    occupation(u, threshold * boltzmann[i], N);
+    const ofI1 = weight[i] * p; // p^2/E dp = p dE
+    const ofJ = (weight[i] * (p * p + u * u)) / p;
     for (let k = 0; k < 3; k++) {
       I1[k] += ofI1 * N[k];
       J[k] += ofJ * N[k];
@@ -82,7 +90,8 @@ function logIntegral(x: number): Derivatives {
   const h = [new Float64Array(n + 1), new Float64Array(n + 1), new Float64Array(n + 1)];
   const N = new Float64Array(3);
   for (let i = 1; i <= n; i++) {
-    occupation(x * Math.cosh(i * step), N);
+    const u = x * Math.cosh(i * step);
+    occupation(u, Math.exp(-u), N);
     for (let k = 0; k < 3; k++) h[k][i] = x * Math.sinh(i * step) * N[k];
   }
   let s00 = 0;
@@ -115,38 +124,41 @@ function fromPressure(T: number, [P, P1, P2]: Derivatives): Thermodynamics {
 /**
  * QED pressure of order e^2 of the e+- photon plasma,
  * P2 = -e^2 T^2 I1/(12 pi^2) - e^2 I1^2/(8 pi^4) + e^2 m^2/(16 pi^4) int int (p p'/(E E')) ln|(p+p')/(p-p')| N N' dp dp',
- * with N = 2/(e^(E/T) + 1), I1 = int p^2/E N dp. Massless limit -5 e^2 T^4/288. Relative accuracy 1e-9.
- * @param TMeV k_B T [MeV], > 0
- * @param mass electron mass [MeV]
- * @see Heckler 1994, Phys. Rev. D 49, 611; Bennett et al. 2020, JCAP 03, 003 (arXiv:1911.04504)
+ * with N = 2/(e^(E/T) + 1), I1 = int p^2/E N dp. Massless limit -5 e^2 T^4/288.
  */
-export function qedSecondOrder(TMeV: number, mass: number): Thermodynamics {
-  const x = mass / TMeV;
-  if (x > VANISHING_X) return NOTHING;
-  const [I, I1, I2] = momentumIntegrals(x).I1;
+function secondOrder(x: number, [I, I1, I2]: Derivatives): Derivatives {
   const [L, L1, L2] = logIntegral(x);
   const a = -E2 / (12 * Math.PI ** 2);
   const b = -E2 / (8 * Math.PI ** 4);
   const c = E2 / (16 * Math.PI ** 4);
-  return fromPressure(TMeV, [
+  return [
     a * I + b * I * I + c * L,
     a * (2 * I + I1) + 2 * b * I * I1 + c * L1,
     a * (4 * I + 4 * I1 + I2) + 2 * b * (I1 * I1 + I * I2) + c * L2,
-  ]);
+  ];
 }
 
 /**
  * QED pressure of order e^3 (screening), P3 = e^3 T/(12 pi^4) [int (p^2 + E^2)/E N dp]^(3/2).
- * Massless limit e^3 T^4/(12 pi 3^1.5). Relative accuracy 1e-10.
- * @param TMeV k_B T [MeV], > 0
- * @param mass electron mass [MeV]
- * @see Bennett et al. 2020, JCAP 03, 003 (arXiv:1911.04504)
+ * Massless limit e^3 T^4/(12 pi 3^1.5).
  */
-export function qedThirdOrder(TMeV: number, mass: number): Thermodynamics {
-  const x = mass / TMeV;
-  if (x > VANISHING_X) return NOTHING;
-  const [J, J1, J2] = momentumIntegrals(x).J;
+function thirdOrder([J, J1, J2]: Derivatives): Derivatives {
   const P = (E2 ** 1.5 / (12 * Math.PI ** 4)) * J ** 1.5;
   const growth = 1 + (1.5 * J1) / J;
-  return fromPressure(TMeV, [P, P * growth, P * (growth * growth + 1.5 * (J2 / J - (J1 / J) ** 2))]);
+  return [P, P * growth, P * (growth * growth + 1.5 * (J2 / J - (J1 / J) ** 2))];
+}
+
+/**
+ * Finite-temperature QED terms of the e+- photon plasma of order e^2 (logarithmic term included) and e^3, each with its
+ * pressure P, rho = -P + T dP/dT and d rho/d ln T, all by quadrature; relative accuracy 1e-8.
+ * @param TMeV k_B T [MeV], > 0
+ * @param mass electron mass [MeV]
+ * @see Heckler 1994, Phys. Rev. D 49, 611; Fornengo, Kim & Song 1997, Phys. Rev. D 56, 5123; Bennett et al. 2020,
+ *   JCAP 03, 003 (arXiv:1911.04504)
+ */
+export function qedTerms(TMeV: number, mass: number): { second: Thermodynamics; third: Thermodynamics } {
+  const x = mass / TMeV;
+  if (x > VANISHING_X) return { second: NOTHING, third: NOTHING };
+  const { I1, J } = momentumIntegrals(x);
+  return { second: fromPressure(TMeV, secondOrder(x, I1)), third: fromPressure(TMeV, thirdOrder(J)) };
 }
