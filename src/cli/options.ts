@@ -46,7 +46,7 @@ function accepted(key: string): string {
 export function strictNumber(text: string, option: string, expected: string): number {
   const value = NUMBER.test(text.trim()) ? Number(text) : Number.NaN;
   if (!Number.isFinite(value))
-    throw new InputError("number", `${option} ${text === "" ? '""' : text}: not a number; give ${expected}`);
+    throw new InputError("number", `${option} ${text === "" ? '""' : text}: not a finite number; give ${expected}`);
   return value;
 }
 
@@ -64,8 +64,9 @@ function measuredInRange(text: string, option: string, key: string): number | Me
   if (second === undefined) return numberInRange(text, option, key);
   if (rest.length > 0) throw new InputError("number", `${option} ${text}: more than one error; write VALUE±SIGMA`);
   const value = numberInRange(first, option, key);
-  const sigma = strictNumber(second, option, "VALUE±SIGMA, the error a number of 0 or more");
-  if (sigma < 0) throw new InputError("range", `${option} ${text}: the error must be 0 or more`);
+  const sigma = NUMBER.test(second.trim()) ? Number(second) : Number.NaN;
+  if (!(sigma >= 0 && sigma < Number.POSITIVE_INFINITY))
+    throw new InputError("number", `${option} ${text}: the error after ± must be a number of 0 or more`);
   return { value, sigma };
 }
 
@@ -85,7 +86,7 @@ function oneOf(text: string, option: string, choices: readonly string[]): string
 function pair(text: string, option: string, expected: string): [string, string] {
   const at = text.lastIndexOf("=");
   if (at <= 0 || at === text.length - 1)
-    throw new InputError("syntax", `${option} ${text}: write ${expected}, e.g. ${option} "d(p,g)he3=...")`);
+    throw new InputError("syntax", `${option} ${text}: write ${expected}, with a reaction such as d(p,g)he3`);
   return [text.slice(0, at).trim(), text.slice(at + 1).trim()];
 }
 
@@ -124,6 +125,14 @@ export function parseChart(text: string, names: readonly string[], previous: rea
   if (!/[^/\\]\.(png|svg|pdf)$/i.test(request.file))
     throw new InputError("choice", `--chart ${text}: the file must end in .png, .svg or .pdf`);
   return [...previous, request];
+}
+
+/** @throws {InputError} unless a whole number from 1 */
+function parseJobs(text: string): number {
+  const jobs = strictNumber(text, "--jobs", "a whole number from 1");
+  if (!(Number.isInteger(jobs) && jobs >= 1))
+    throw new InputError("range", `--jobs ${text}: must be a whole number from 1`);
+  return jobs;
 }
 
 function unitSuffix(unit: string): string {
@@ -209,6 +218,10 @@ export function outputOptions(charts: readonly string[] = []): Option[] {
       .argParser((text: string) => oneOf(text, "--format", FORMATS)),
     new Option("--out <file>", "write the result to a file, whole or not at all (default standard output)"),
     ...(charts.length > 0 ? [chart] : []),
+    new Option(
+      "--jobs <n>",
+      "worker threads of commands that run many cases; this one runs on a single thread",
+    ).argParser(parseJobs),
     new Option("--quiet", "no progress on standard error"),
     new Option("--debug", "show where an error came from"),
   ];
@@ -220,7 +233,7 @@ const KEY_OF_OPTION: Readonly<Record<string, keyof Keys>> = {
   evaluation: "evaluations",
   scale: "scales",
 };
-const NOT_KEYS = ["format", "out", "chart", "rates", "quiet", "debug"];
+const NOT_KEYS = ["format", "out", "chart", "rates", "jobs", "quiet", "debug"];
 
 /** The keys of a request from the options that were given. */
 export function toKeys(options: Options): Keys {

@@ -65,12 +65,26 @@ function requireKnownCommand(args: readonly string[]): void {
   throw new InputError("command", `unknown command ${word};${hint} commands are ${names.join(", ")}`);
 }
 
+/** What to do about a mistake that commander finds, by its code. */
+const REMEDIES: Readonly<Record<string, string>> = {
+  "commander.conflictingOption": "give one of them",
+  "commander.excessArguments": "options start with --",
+  "commander.optionMissingArgument": "write the value after it",
+};
+
+/** A request speaks of keys, `network = x`; on the command line they are options, `--network x`. */
+function nameOptions(message: string): string {
+  return message.replace(/^(network|expansion|errors|samples|seed|tolerance|rates|scale) (?:= )?/, "--$1 ");
+}
+
 /** One line for an error, and the exit status. */
 export function describeError(error: unknown): { readonly line: string; readonly status: number } {
   const say = (text: string) => `emberline: ${text.trim().replace(/\s*\n\s*/g, " ")}`;
-  if (error instanceof EmberlineError) return { line: say(error.message), status: error.exitCode };
-  if (error instanceof CommanderError)
-    return { line: say(`${error.message.replace(/^error: /, "")}; see emberline help`), status: 2 };
+  if (error instanceof EmberlineError) return { line: say(nameOptions(error.message)), status: error.exitCode };
+  if (error instanceof CommanderError) {
+    const message = error.message.replace(/^error: /, "").replace(/\.$/, "");
+    return { line: say(`${message}; ${REMEDIES[error.code] ?? "see emberline help"}`), status: 2 };
+  }
   const message = error instanceof Error ? `${error.name}: ${error.message}` : String(error);
   return { line: say(`the calculation failed: ${message}; --debug shows where`), status: 1 };
 }

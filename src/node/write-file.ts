@@ -1,6 +1,6 @@
 /** Writes a file whole or not at all: a temporary file in the same folder, synchronised, then renamed. */
 import { constants } from "node:fs";
-import { access, open, rename, stat, unlink } from "node:fs/promises";
+import { access, open, realpath, rename, stat, unlink } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
 import { InputError } from "../numerics/check.ts";
 
@@ -38,20 +38,22 @@ export async function requireWritable(path: string): Promise<void> {
     const folder = await stat(dirname(path));
     if (!folder.isDirectory()) throw Object.assign(new Error(), { code: "ENOTDIR" });
     await access(dirname(path), constants.W_OK);
+    if (found !== undefined) await access(path, constants.W_OK);
   } catch (error) {
     throw refusal(path, error);
   }
 }
 
 /**
- * Writes the whole content or leaves what was there. A device such as /dev/null is written directly.
+ * Writes the whole content or leaves what was there. A device or pipe is written directly; a link keeps pointing.
  * @throws {InputError} if the file cannot be written; no temporary file remains
  */
 export async function writeWhole(path: string, content: string | Uint8Array): Promise<void> {
   await requireWritable(path);
   const existing = await stat(path).catch(() => undefined);
   const direct = existing !== undefined && !existing.isFile();
-  const target = direct ? path : join(dirname(path), `.${basename(path).slice(0, 200)}.${process.pid}.part`);
+  const final = existing === undefined || direct ? path : await realpath(path);
+  const target = direct ? path : join(dirname(final), `.${basename(final).slice(0, 200)}.${process.pid}.part`);
   let created = false;
   try {
     const file = await open(target, direct ? "w" : "wx", existing?.isFile() ? existing.mode & 0o777 : 0o666);
@@ -62,7 +64,7 @@ export async function writeWhole(path: string, content: string | Uint8Array): Pr
     } finally {
       await file.close();
     }
-    if (!direct) await rename(target, path);
+    if (!direct) await rename(target, final);
   } catch (error) {
     if (created) await unlink(target).catch(() => undefined);
     throw refusal(path, error);

@@ -14,8 +14,10 @@ function estimates(results: AbundanceResults): [AbundanceName, Estimate][] {
   return Object.entries(results.abundances) as [AbundanceName, Estimate][];
 }
 
+/** One line an abundance; those of nuclides that the network does not hold are 0 and stay out. */
 function estimateLines(results: AbundanceResults): string[] {
-  const rows = estimates(results).map(([name, estimate]) => [
+  const present = estimates(results).filter(([, estimate]) => estimate.value !== 0);
+  const rows = present.map(([name, estimate]) => [
     `  ${abundanceLabel(name)}`,
     formatEstimate(estimate.value, estimate.sigma),
     DEFINITIONS[name],

@@ -36,10 +36,16 @@ function spread(values: readonly number[], count: number): number[] {
   return [...new Set(chosen)];
 }
 
-function shortTable(table: Table, columns: readonly (readonly [name: string, head: string])[], rows: number[]) {
+/** Chosen rows of chosen columns, set flush right. */
+function shortTable(
+  table: Table,
+  columns: readonly (readonly [name: string, head: string])[],
+  rows: readonly number[],
+  digits: number,
+): string[] {
   const head = columns.map(([, text]) => text);
   const data = columns.map(([name]) => numericColumn(table, name));
-  const body = rows.map((row) => data.map((values) => formatNumber(values[row], 4)));
+  const body = rows.map((row) => data.map((values) => formatNumber(values[row], digits)));
   return alignColumns(
     [head, ...body],
     columns.map((_, i) => i),
@@ -70,11 +76,11 @@ export function historyText(answer: Envelope<HistoryResults>): string {
     "Milestones",
     ...milestoneLines(milestones),
     "",
-    "Temperatures (of photons; ratios of neutrinos to photons), expansion and weak rates",
-    ...shortTable(table, rates, rows),
+    "Temperature T of photons, neutrinos relative to it, expansion and weak rates",
+    ...shortTable(table, rates, rows, 4),
     "",
     "Abundances Y = n_i/n_b",
-    ...shortTable(table, abundances, rows),
+    ...shortTable(table, abundances, rows, 3),
     "",
     ...wrap(`${table.rows.length} rows and ${table.columns.length} columns with --format csv, ecsv or json.`, "  "),
     "",

@@ -8,6 +8,11 @@ import { alignColumns, displayWidth, formatEstimate, formatNumber, pad, TEXT_WID
 /** Evaluation name of the fits that are taken as they stand; they are listed together. */
 const COLLECTION = "reaclib";
 
+/** The same text, never broken between its words. */
+function held(text: string): string {
+  return text.replaceAll(" ", "\u00a0");
+}
+
 /** A labelled paragraph, its label in a column of its own. */
 export function entry(label: string, text: string): string[] {
   return wrap(text, `  ${pad(label, 13)}`, " ".repeat(15));
@@ -32,9 +37,9 @@ export function cosmologyLines(c: CosmologyParameters): string[] {
     ["xi_tau", c.xiTau],
   ] as const)
     if (value !== 0) parts.push(`${name} ${value}`);
-  const lines = entry("cosmology", parts.join(", "));
+  const lines = entry("cosmology", parts.map(held).join(", "));
   if (c.expansion.trim() !== "1") lines.push(...entry("expansion", `H(T) times ${c.expansion}`));
-  const scaled = Object.entries(c.scales).map(([id, factor]) => `${formatReaction(id)} x ${factor}`);
+  const scaled = Object.entries(c.scales).map(([id, factor]) => held(`${id} x ${factor}`));
   if (scaled.length > 0) lines.push(...entry("scaled rates", scaled.join(", ")));
   return lines;
 }
@@ -47,9 +52,10 @@ function rateLines(rates: readonly RateUsed[]): string[] {
   const room = Math.max(0, ...heads.map(displayWidth)) + 2;
   const lines = own.flatMap((rate, i) => wrap(rate.citation, pad(heads[i], room), " ".repeat(room)));
   if (rest.length > 0) {
-    const label = own.length > 0 ? `and ${rest.length} from ${COLLECTION}:` : `${rest.length} from ${COLLECTION}:`;
-    const names = rest.map((rate) => formatReaction(rate.reaction).replaceAll(" ", "\u00a0")).join(", ");
-    lines.push(...wrap(`${label} ${names}`, "  ", "    ").map((line) => line.replaceAll("\u00a0", " ")));
+    const sources = [...new Set(rest.map((rate) => rate.citation.split(";")[0]))];
+    const label = `${own.length > 0 ? "and " : ""}${rest.length} from ${COLLECTION}, ${sources.join("; ")}:`;
+    const names = rest.map((rate) => held(formatReaction(rate.reaction))).join(", ");
+    lines.push(...wrap(`${label} ${names}`, "  ", "    "));
   }
   return lines;
 }
@@ -63,7 +69,7 @@ export function provenanceLines(answer: Envelope): string[] {
     `${solver.rejected} rejected`,
     `${solver.rhs} right-hand sides`,
     `${solver.jacobians} Jacobians`,
-    `tolerance ${solver.tolerance}`,
+    `tolerance ${solver.tolerance.toExponential()}`,
     ...(solver.wall_ms === undefined ? [] : [`${Math.round(solver.wall_ms)} ms`]),
   ];
   const lines = [
@@ -71,7 +77,7 @@ export function provenanceLines(answer: Envelope): string[] {
     ...entry("corrections", provenance.corrections.length > 0 ? provenance.corrections.join(", ") : "none"),
     ...(off.length > 0 ? entry("left out", off.join(", ")) : []),
     ...entry("constants", provenance.constants),
-    ...entry("solver", cost.join(", ")),
+    ...entry("solver", cost.map(held).join(", ")),
     ...entry("network", `${provenance.network}: ${provenance.rates.length} rates and n ↔ p`),
     "",
     "Rates",

@@ -66,7 +66,7 @@ export function alignColumns(rows: readonly (readonly string[])[], right: readon
 }
 
 /**
- * A paragraph broken between words to fit a width; a longer word stands alone on its line.
+ * A paragraph broken between words to fit a width; a longer word stands alone on its line. A no-break space holds.
  * @param first  what the first line starts with
  * @param indent what every further line starts with
  */
@@ -74,7 +74,7 @@ export function wrap(text: string, first = "", indent = first, width = TEXT_WIDT
   const lines: string[] = [];
   let line = first;
   let empty = true;
-  for (const word of text.split(/\s+/).filter((w) => w !== "")) {
+  for (const word of text.split(/[ \n]+/).filter((w) => w !== "")) {
     if (!empty && displayWidth(line) + 1 + displayWidth(word) > width) {
       lines.push(line);
       line = indent;
@@ -84,5 +84,5 @@ export function wrap(text: string, first = "", indent = first, width = TEXT_WIDT
     empty = false;
   }
   lines.push(line.trimEnd());
-  return lines;
+  return lines.map((each) => each.replaceAll("\u00a0", " "));
 }

@@ -11,6 +11,6 @@ export function run(options: Options): Promise<void> {
     compute: computeHistory,
     text: historyText,
     table: (results) => results.table,
-    figure: (answer, name) => historyFigure(answer.results.table, noteLine(answer), name),
+    figure: (answer, name) => historyFigure(answer.results.table, noteLine(answer), answer.results.milestones, name),
   });
 }
