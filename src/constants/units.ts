@@ -1,5 +1,14 @@
 /** The only place that converts units: K <-> T9 <-> MeV, Mpc <-> cm, MeV4 -> g/cm3, natural time -> s. */
-import { ATOMIC_MASS_CONSTANT, AVOGADRO, BOLTZMANN, ELEMENTARY_CHARGE, HBAR, LIGHT_SPEED, NEWTON_G } from "./codata.ts";
+import {
+  ATOMIC_MASS_CONSTANT,
+  AVOGADRO,
+  BOLTZMANN,
+  ELEMENTARY_CHARGE,
+  HBAR,
+  LIGHT_SPEED,
+  NEWTON_G,
+  PLANCK,
+} from "./codata.ts";
 
 /** 1 MeV in joule (exact). */
 export const JOULE_PER_MEV = ELEMENTARY_CHARGE.value * 1e6;
@@ -22,6 +31,12 @@ export const METRE_PER_MPC = METRE_PER_PARSEC * 1e6;
 export const CM_PER_MPC = METRE_PER_MPC * 100;
 /** Julian year in seconds (IAU): 365.25 d. */
 export const SECONDS_PER_JULIAN_YEAR = 365.25 * 86400;
+/** Centimetre per metre, and the same squared and cubed. */
+export const CM_PER_METRE = 100;
+export const CM2_PER_M2 = 1e4;
+export const CM3_PER_M3 = 1e6;
+/** Kelvin per 1/cm of a spectroscopic term (wavenumber): h c/k_B, exact in the 2019 SI. */
+export const KELVIN_PER_WAVENUMBER = (PLANCK.value * LIGHT_SPEED.value * 100) / BOLTZMANN.value;
 /** Gram per MeV/c2. */
 export const GRAM_PER_MEV = (JOULE_PER_MEV / LIGHT_SPEED.value ** 2) * 1000;
 /** g/cm3 per MeV4 (natural units, hbar = c = 1). */
