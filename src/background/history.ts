@@ -5,10 +5,9 @@ import { intervalOf, notAKnotSpline, type Spline } from "../numerics/interpolate
 import { integrateSmooth } from "../numerics/ode-smooth.ts";
 import { effectiveNeutrinoNumber } from "./neutrinos.ts";
 import {
-  BACKGROUND_DEFAULTS,
   type BackgroundOptions,
   type CompleteOptions,
-  checkOptions,
+  completeOptions,
   END_T9,
   entropyScaling,
   equations,
@@ -16,10 +15,14 @@ import {
   type Scratch,
 } from "./thermal-equations.ts";
 
-export { BACKGROUND_DEFAULTS, type BackgroundOptions, END_T9, type ExpansionFactor } from "./thermal-equations.ts";
+export {
+  BACKGROUND_DEFAULTS,
+  type BackgroundOptions,
+  END_T9,
+  type ExpansionFactor,
+  START_MEV,
+} from "./thermal-equations.ts";
 
-/** Start of the history [MeV] unless `startMeV` is given. */
-export const START_MEV = { threeTemperatures: 10, instantaneous: 20 } as const;
 /** Largest spacing of the output grid in ln T. */
 const GRID_SPACING = 1 / 102.4;
 
@@ -102,16 +105,15 @@ function outputGrid(startMeV: number): Float64Array {
  * history is repeated until both agree to 1e-10. Degeneracies count in the energy densities, not in the exchange rates.
  *
  * @param options departures from BACKGROUND_DEFAULTS
- * @returns columns on a uniform grid of about 1030 points, good to 1e-8 for cubic splines
+ * @returns columns on a uniform grid of about 1030 points, good to 1e-7 for cubic splines except in the first three
+ *   intervals, where T_nu relaxes (by 4e-7) from the one common temperature
  * @throws {InputError} for an option out of range, or a user's factor that is not positive and finite throughout
  * @throws {CalculationError} if the integration fails
  * @see Escudero 2020, JCAP 05, 048 (arXiv:2001.04466); Bennett et al. 2021, JCAP 04, 073
  */
 export function computeThermalHistory(options: Partial<BackgroundOptions> = {}): ThermalHistory {
-  const o: CompleteOptions = { ...BACKGROUND_DEFAULTS, ...options };
-  const startMeV = o.startMeV ?? (o.incompleteDecoupling ? START_MEV.threeTemperatures : START_MEV.instantaneous);
-  checkOptions(o, startMeV);
-  const s = outputGrid(startMeV);
+  const o = completeOptions(options);
+  const s = outputGrid(o.startMeV);
   const columns = Array.from({ length: 8 }, () => new Float64Array(s.length));
   const [t, lnAT, nue, numu, H, lnDtds, rho, heating] = columns;
   const write: Writer = (i, y, scratch) => {

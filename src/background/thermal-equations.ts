@@ -10,7 +10,10 @@ import {
 } from "./neutrinos.ts";
 import { PLASMA_COLUMNS, plasmaTable } from "./plasma.ts";
 
-/** Factor on H at T [K], TMeV, t [s] and H [1/s], the last before the factor. */
+/**
+ * Factor on H at T [K], TMeV, t [s] and H [1/s], the last before the factor and without baryons. It acts from the start
+ * on, neutrino decoupling included.
+ */
 export type ExpansionFactor = (T: number, TMeV: number, t: number, H: number) => number;
 
 export interface BackgroundOptions {
@@ -43,24 +46,36 @@ export const BACKGROUND_DEFAULTS = {
   qedE3: true,
   incompleteDecoupling: true,
   gravity: 1,
-  rtol: 1e-9,
+  rtol: 1e-11,
 } as const satisfies BackgroundOptions;
 
 /** Options with every default filled in. */
-export type CompleteOptions = BackgroundOptions & { readonly gravity: number; readonly rtol: number };
+export type CompleteOptions = BackgroundOptions & {
+  readonly gravity: number;
+  readonly startMeV: number;
+  readonly rtol: number;
+};
 
+/** Start of the history [MeV] unless `startMeV` is given. */
+export const START_MEV = { threeTemperatures: 10, instantaneous: 20 } as const;
 /** Photon temperature of the end [GK]: 0.43 keV. */
 export const END_T9 = 0.005;
 
-/** @throws {InputError} naming the option out of range */
-export function checkOptions(o: CompleteOptions, startMeV: number): void {
+/** Fills in the defaults and checks the ranges. @throws {InputError} naming the option out of range */
+export function completeOptions(options: Partial<BackgroundOptions>): CompleteOptions {
+  const given = Object.fromEntries(Object.entries(options).filter(([, value]) => value !== undefined));
+  const merged = { ...BACKGROUND_DEFAULTS, ...(given as Partial<BackgroundOptions>) };
+  const startMeV =
+    merged.startMeV ?? (merged.incompleteDecoupling ? START_MEV.threeTemperatures : START_MEV.instantaneous);
+  const o: CompleteOptions = { ...merged, startMeV } as CompleteOptions;
   requireRange("deltaNEff", o.deltaNEff, "", -3.5, 1000); // the total density stays positive down to -3.5
   requireRange("xiE", o.xiE, "", -10, 10);
   requireRange("xiMu", o.xiMu, "", -10, 10);
   requireRange("xiTau", o.xiTau, "", -10, 10);
-  requireRange("startMeV", startMeV, "MeV", 2, 1000);
+  requireRange("startMeV", o.startMeV, "MeV", 2, 1000);
   requireRange("rtol", o.rtol, "", 1e-13, 1e-4);
   requireRange("gravity", o.gravity, "", 1e-6, 1e6);
+  return o;
 }
 
 /** H^2 = FRIEDMANN rho: 8 pi G/3 with rho in MeV4, [1/(s2 MeV4)]. */
@@ -148,12 +163,16 @@ export function equations(o: CompleteOptions, lnHeating: number) {
     table.evaluate(lnT, scratch.plasma);
     const rho = density(1, 1, 0);
     let t = 1 / (2 * hubble * Math.sqrt(rho) * Math.exp(2 * lnT));
-    for (let i = 0; o.expansion && i < 50; i++) {
+    if (!o.expansion) return t;
+    for (let i = 0; i < 500; i++) {
       const next = 1 / (2 * expansionRate(lnT, rho, t));
-      if (Math.abs(next / t - 1) < 1e-14) break;
+      if (Math.abs(next / t - 1) < 1e-13) return next;
       t = next;
     }
-    return t;
+    throw new InputError(
+      "expansion",
+      "expansion: the age t = 1/(2H) at the start does not settle; weaken its t dependence",
+    );
   };
   return { rhs, startTime, scratch };
 }
