@@ -25,7 +25,7 @@ import {
 import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
 import { propagateLinearly } from "../uncertainty/propagation.ts";
 import type { WeakOptions } from "../weak/inputs.ts";
-import { tabulateWeakRates, type WeakTable } from "../weak/table.ts";
+import { tabulateWeakRates, WEAK_TABLE_SPACING, type WeakTable } from "../weak/table.ts";
 
 export interface Estimate {
   readonly value: number;
@@ -197,15 +197,12 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
   };
 }
 
-/** Spacing of the weak table in s = -ln T9: interpolation error below 1e-6. */
-const WEAK_SPACING = 0.05;
-
 function weakTable(history: ThermalHistory, xiE: number, switches: WeakOptions): WeakTable {
   const { s, TnueOverT } = history;
   const start = s[0];
   const end = s[s.length - 1];
   const ratio = notAKnotSpline(s, TnueOverT);
-  const count = Math.ceil((end - start) / WEAK_SPACING) + 1;
+  const count = Math.ceil((end - start) / WEAK_TABLE_SPACING) + 1;
   return tabulateWeakRates({ start, end, count }, ratio.value, xiE, switches);
 }
 

@@ -95,7 +95,11 @@ export function planElimination(pattern: readonly ReadonlySet<number>[]): Elimin
   }
   for (let k = n - 1; k >= 0; k--) {
     const i = order[k];
-    const right = order.slice(k + 1).filter((j) => slot(i, j) >= 0);
+    // From the last column back: the order in which a column-wise substitution subtracts them.
+    const right = order
+      .slice(k + 1)
+      .filter((j) => slot(i, j) >= 0)
+      .reverse();
     backward.push(i, slot(i, i), right.length);
     for (const j of right) backward.push(slot(i, j), j);
     solveOperations += right.length;

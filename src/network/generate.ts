@@ -44,15 +44,42 @@ export function generateKernels(network: CompiledNetwork): NetworkKernels | null
   }
 }
 
-/** Statements, made of integers only, -> functions of at most MAX_SOURCE characters each, called in order. */
-function chunked(parameters: readonly string[], statements: readonly string[]): (...args: unknown[]) => void {
+/** An array held in local variables inside each function: loaded at its head, stored at its end. */
+interface Locals {
+  readonly load: string;
+  readonly clear: string;
+  readonly store: string;
+}
+
+function locals(n: number, name: string, array: string): Locals {
+  const list = (make: (i: number) => string) => Array.from({ length: n }, (_, i) => make(i));
+  return {
+    load: `let ${list((i) => `${name}${i}=${array}[${i}]`).join(",")};`,
+    clear: `let ${list((i) => `${name}${i}=0`).join(",")};`,
+    store: list((i) => `${array}[${i}]=${name}${i};`).join(""),
+  };
+}
+
+/**
+ * Statements, made of integers only, -> functions of at most MAX_SOURCE characters each, called in order.
+ * @param held an array kept in local variables
+ * @param first "0" if that array starts from zeros instead of its contents
+ */
+function chunked(
+  parameters: readonly string[],
+  statements: readonly string[],
+  held?: Locals,
+  first?: "0",
+): (...args: unknown[]) => void {
   const functions: ((...args: unknown[]) => void)[] = [];
   let body: string[] = [];
   let size = 0;
   const flush = () => {
     if (body.length === 0) return;
     instances++;
-    functions.push(new Function(...parameters, `"use strict";/*${instances}*/let t;\n${body.join("\n")}`) as never);
+    const head = held === undefined ? "" : functions.length === 0 && first === "0" ? held.clear : held.load;
+    const text = `"use strict";/*${instances}*/let t=0;${head}\n${body.join("\n")}\n${held?.store ?? ""}`;
+    functions.push(new Function(...parameters, text) as never);
     body = [];
     size = 0;
   };
@@ -63,23 +90,15 @@ function chunked(parameters: readonly string[], statements: readonly string[]): 
   }
   flush();
   if (functions.length === 1) return functions[0];
-  if (functions.length === 2) {
-    const [first, second] = functions;
-    return (...args) => {
-      first(...args);
-      second(...args);
-    };
-  }
-  return (...args) => {
-    for (const f of functions) f(...args);
-  };
+  const call = parameters.join(",");
+  const names = functions.map((_, i) => `f${i}`);
+  return new Function(...names, `return (${call})=>{${names.map((f) => `${f}(${call});`).join("")}};`)(...functions);
 }
 
 function build(network: CompiledNetwork): NetworkKernels {
   const { n, structure, reactions, elimination } = network;
   const { particles, start, nuclide, change } = structure;
   const count = reactions.length;
-  const flows = new Float64Array(count);
   const product = (f: number): string | null => {
     const trio = [...particles.subarray(3 * f, 3 * f + 3)];
     if (trio.includes(n + 1)) return null;
@@ -89,17 +108,18 @@ function build(network: CompiledNetwork): NetworkKernels {
     const size = Math.abs(coefficient);
     return `${coefficient < 0 ? "-" : "+"}${size === 1 ? "" : `${size}*`}${what}`;
   };
-  // Net flow of each reaction, then the sum over reactions of each nuclide.
+  // Net flow of each reaction, added to the sums of its nuclides, which stay in local variables.
   const rhs: string[] = [];
   for (let k = 0; k < count; k++) {
     const back = product(2 * k + 1);
-    rhs.push(`R[${k}]=${product(2 * k)}${back === null ? "" : `-${back}`};`);
+    let statement = `t=${product(2 * k)}${back === null ? "" : `-${back}`};`;
+    for (let e = start[k]; e < start[k + 1]; e++) {
+      const size = Math.abs(change[e]);
+      statement += `d${nuclide[e]}${change[e] < 0 ? "-" : "+"}=${size === 1 ? "" : `${size}*`}t;`;
+    }
+    rhs.push(statement);
   }
-  const sums: string[][] = Array.from({ length: n }, () => []);
-  for (let k = 0; k < count; k++)
-    for (let e = start[k]; e < start[k + 1]; e++) sums[nuclide[e]].push(term(change[e], `R[${k}]`));
-  for (let i = 0; i < n; i++) rhs.push(`d[${i}]=${sums[i].join("") || "0"};`);
-  const derivatives = chunked(["c", "Y", "d", "R"], rhs);
+  const derivatives = chunked(["c", "Y", "d"], rhs, locals(n, "d", "d"), "0");
 
   // Partial derivatives of each flux, then shift I - J slot by slot.
   const partials: string[] = [];
@@ -129,39 +149,51 @@ function build(network: CompiledNetwork): NetworkKernels {
   const work = new Float64Array(partials.length);
   const assemble = chunked(["c", "Y", "h", "v", "P"], [...partials, ...matrix]);
 
+  // Elimination, the pivot row of each step in local constants.
   const factor: string[] = [];
   const { program } = elimination;
   for (let k = 0, at = 0; k < n; k++) {
     const pivot = program[at++];
     const below = program[at++];
-    factor.push(`v[${pivot}]=1/v[${pivot}];`);
+    const columns = Array.from({ length: below > 0 ? program[at + 1] : 0 }, (_, u) => program[at + 3 + 2 * u]);
+    let statement = `{const p=1/v[${pivot}];v[${pivot}]=p;`;
+    columns.forEach((source, u) => {
+      statement += `const r${u}=v[${source}];`;
+    });
     for (let b = 0; b < below; b++) {
       const row = program[at++];
       const updates = program[at++];
-      let statement = `t=v[${row}]*v[${pivot}];v[${row}]=t;`;
-      for (let u = 0; u < updates; u++, at += 2) statement += `v[${program[at]}]-=t*v[${program[at + 1]}];`;
-      factor.push(statement);
+      statement += `t=v[${row}]*p;v[${row}]=t;`;
+      for (let u = 0; u < updates; u++, at += 2) statement += `v[${program[at]}]-=t*r${u};`;
     }
+    factor.push(`${statement}}`);
   }
   const eliminate = chunked(["v"], factor);
 
+  // Substitution column by column, the unknowns in local variables.
   const solution: string[] = [];
-  const { forward, backward } = elimination;
-  const dots = (list: Int32Array, at: number, entries: number) => {
-    let text = "";
-    for (let u = 0; u < entries; u++) text += `-v[${list[at + 2 * u]}]*b[${list[at + 2 * u + 1]}]`;
-    return text;
-  };
-  for (let at = 0; at < forward.length; at += 2 + 2 * forward[at + 1])
-    solution.push(`b[${forward[at]}]=b[${forward[at]}]${dots(forward, at + 2, forward[at + 1])};`);
-  for (let at = 0; at < backward.length; at += 3 + 2 * backward[at + 2])
-    solution.push(
-      `b[${backward[at]}]=(b[${backward[at]}]${dots(backward, at + 3, backward[at + 2])})*v[${backward[at + 1]}];`,
-    );
-  const solve = chunked(["v", "b"], solution);
+  const { order, slot } = elimination;
+  for (let k = 0; k < n; k++) {
+    let statement = "";
+    for (let l = k + 1; l < n; l++) {
+      const s = slot(order[l], order[k]);
+      if (s >= 0) statement += `b${order[l]}-=v[${s}]*b${order[k]};`;
+    }
+    if (statement) solution.push(statement);
+  }
+  for (let k = n - 1; k >= 0; k--) {
+    const j = order[k];
+    let statement = `b${j}*=v[${slot(j, j)}];`;
+    for (let l = k - 1; l >= 0; l--) {
+      const s = slot(order[l], j);
+      if (s >= 0) statement += `b${order[l]}-=v[${s}]*b${j};`;
+    }
+    solution.push(statement);
+  }
+  const solve = chunked(["v", "b"], solution, locals(n, "b", "b"));
   return {
     kind: "straight-line",
-    derivatives: (c, Y, d) => derivatives(c, Y, d, flows),
+    derivatives: derivatives as NetworkKernels["derivatives"],
     assemble: (c, Y, shift, values) => assemble(c, Y, shift, values, work),
     factor(values) {
       eliminate(values);

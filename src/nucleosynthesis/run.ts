@@ -9,6 +9,7 @@ import { type SolverCounts, type StiffOptions, StiffStepper, type StiffSystem } 
 import type { WeakTable } from "../weak/table.ts";
 import { type Clock, networkTable, sampleClock, TABLE_INTERVALS, weakOnlyTable } from "./coefficients.ts";
 import { type FluxTable, resample } from "./flux-table.ts";
+import { marchAdaptively } from "./march-run.ts";
 import { type NetworkData, WEAK_REACTION } from "./network-data.ts";
 
 /** Temperature where n <-> p starts from its equilibrium [MeV]. */
@@ -100,6 +101,14 @@ export const WEAK_NETWORK = compileNetwork(["n", "p"], [{ id: WEAK_REACTION, rea
 /** Its kernels: too small for generated code to pay. */
 export const WEAK_KERNELS = loopKernels(WEAK_NETWORK);
 
+/** Factor of each flux: the power of eta10 it grows with, the factor of its reaction, 1/tau_n for n <-> p. */
+function fluxScale(network: CompiledNetwork, table: FluxTable, inputs: RunInputs): Float64Array {
+  const scale = new Float64Array(network.fluxes);
+  for (let f = 0; f < network.fluxes; f++)
+    scale[f] = inputs.eta10 ** table.etaPowers[f] * (inputs.factors?.[f >> 1] ?? 1) * (f < 2 ? 1 / inputs.tauN : 1);
+  return scale;
+}
+
 /** A flux table at given eta10, tau_n and factors, as a stiff system in s with sparse linear algebra. */
 export function networkSystem(
   network: CompiledNetwork,
@@ -108,9 +117,7 @@ export function networkSystem(
   inputs: RunInputs,
 ): StiffSystem {
   const fluxes = network.fluxes;
-  const scale = new Float64Array(fluxes);
-  for (let f = 0; f < fluxes; f++)
-    scale[f] = inputs.eta10 ** table.etaPowers[f] * (inputs.factors?.[f >> 1] ?? 1) * (f < 2 ? 1 / inputs.tauN : 1);
+  const scale = fluxScale(network, table, inputs);
   const c = new Float64Array(fluxes + 1);
   const dc = new Float64Array(fluxes + 1);
   let at = Number.NaN;
@@ -224,11 +231,25 @@ export function initialAbundances(context: RunContext, inputs: RunInputs): { Y: 
 export function runNetwork(context: RunContext, inputs: RunInputs): NuclearRun {
   const start = initialAbundances(context, inputs);
   const table = inputs.table ?? context.table;
+  const options = tolerances(context.data, inputs);
+  if (options.method === "rodas4") {
+    const { compiled } = context.data;
+    const scale = fluxScale(compiled, table, inputs);
+    const counts = marchAdaptively(
+      context.kernels(),
+      compiled.elimination.slots,
+      table,
+      start.Y,
+      scale,
+      inputs.eta10,
+      options.rtol,
+      options.atol as Float64Array,
+    );
+    return { Y: start.Y, counts: addCounts(start.counts, counts) };
+  }
   const system = networkSystem(context.data.compiled, context.kernels(), table, inputs);
   const end = table.start + table.step * table.intervals;
-  const stepper = new StiffStepper(system, table.start, start.Y, end, {
-    ...tolerances(context.data, inputs),
-  });
+  const stepper = new StiffStepper(system, table.start, start.Y, end, options);
   while (!stepper.done) stepper.step();
   return { Y: stepper.y, counts: addCounts(start.counts, stepper.counts) };
 }

@@ -1,0 +1,140 @@
+/** The error budget of one cosmology: sensitivities of every abundance, and the share of each source in its variance. */
+import { NEUTRON_MEAN_LIFE } from "../constants/particle.ts";
+import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
+import { WEAK_REACTION } from "../nucleosynthesis/network-data.ts";
+import { addCounts, type RunContext, type RunInputs } from "../nucleosynthesis/run.ts";
+import type { SolverCounts } from "../numerics/ode-stiff.ts";
+import { type CosmologyParameters, DEFAULTS, RANGES } from "../parameters/cosmology.ts";
+import { propagateLinearly } from "../uncertainty/propagation.ts";
+import { type CentralStep, centralSensitivities, relativeStep } from "../uncertainty/sensitivity.ts";
+import { applyVariations, errorSources, type Estimate, type Model, scaleFactors } from "./prepare.ts";
+
+/** Shares by which a parameter is moved to either side; N_eff by an amount. */
+export const SENSITIVITY_STEPS = { omegaB: 0.02, tauN: 0.02, G: 0.02, rate: 0.05, nEff: 0.06 } as const;
+/** Thermal neutrino species at which the sensitivity to N is stated: d ln X/d ln N = 3 d ln X/d(deltaNEff). */
+export const SPECIES = 3;
+
+/** Where the size of an error comes from; `given`: by the user. */
+export type UncertaintyBasis = "published" | "assumed" | "from memory" | "given";
+
+/** One independent source of error. */
+export interface ErrorSource {
+  /** `tauN` (which sets the n <-> p rates), the id of a reaction, or `omegaB` where it was given with an error. */
+  readonly name: string;
+  readonly basis: UncertaintyBasis;
+  /** The paper or collection that the recommended value comes from. */
+  readonly citation: string;
+  readonly evaluation?: string;
+}
+
+/** Quantities that are 0 (a nuclide that the network does not make) are left out. */
+export interface ErrorBudget {
+  readonly abundances: Readonly<Partial<Record<AbundanceName, Required<Estimate>>>>;
+  /** sensitivities[abundance][omegaB | tauN | nEff | G | n_p | reaction] = d ln X/d ln p. */
+  readonly sensitivities: Readonly<Record<string, Readonly<Record<string, number>>>>;
+  /** variance[abundance][source]: share of the variance of ln X; the shares of an abundance add to 1. */
+  readonly variance: Readonly<Record<string, Readonly<Record<string, number>>>>;
+  readonly correlation: { readonly order: readonly string[]; readonly matrix: readonly (readonly number[])[] };
+  readonly sources: readonly ErrorSource[];
+  readonly nEffComputed: number;
+  readonly counts: SolverCounts;
+}
+
+/** The sources of error in the order of their variations: tau_n, each reaction of the network, omega_b if it has one. */
+export function listErrorSources(context: RunContext, p: CosmologyParameters): ErrorSource[] {
+  const ownLife = p.tauN !== DEFAULTS.tauN || p.tauNSigma !== DEFAULTS.tauNSigma;
+  return [
+    { name: "tauN", basis: ownLife ? "given" : "published", citation: ownLife ? "given" : NEUTRON_MEAN_LIFE.source },
+    ...context.data.reactions.map(
+      ({ id, selected: { evaluationName, rateTable } }): ErrorSource => ({
+        name: id,
+        basis: rateTable.uncertaintyBasis,
+        citation: rateTable.citation,
+        evaluation: evaluationName,
+      }),
+    ),
+    ...(p.omegaBSigma > 0 ? [{ name: "omegaB", basis: "given", citation: "given" } as const] : []),
+  ];
+}
+
+function sensitivitySteps(context: RunContext, p: CosmologyParameters): CentralStep[] {
+  const s = SENSITIVITY_STEPS;
+  const up = Math.min(p.deltaNEff + s.nEff, RANGES.deltaNEff.max);
+  const down = Math.max(p.deltaNEff - s.nEff, RANGES.deltaNEff.min);
+  return [
+    relativeStep("omegaB", p.eta10, s.omegaB),
+    relativeStep("tauN", p.tauN, s.tauN),
+    { name: "nEff", up, down, lnDistance: (up - down) / SPECIES },
+    relativeStep("G", 1, s.G),
+    ...[WEAK_REACTION, ...context.data.reactions.map((r) => r.id)].map((id) => relativeStep(id, 1, s.rate)),
+  ];
+}
+
+/**
+ * Error budget by linear propagation. Sensitivities d ln X/d ln p by central differences: omega_b (as eta), tau_n and
+ * G (at fixed eta) +-2 %, N_eff +-0.06 as 3 d ln X/d(deltaNEff), each rate +-5 % in both directions at all T (n_p too).
+ * Variances by the response to one standard deviation of each source, f_u(T9)^p with p = +-1 for rates.
+ * @param progress told how many of the runs are done
+ * @throws {InputError | CalculationError}
+ */
+export function computeErrorBudget(
+  model: Model,
+  p: CosmologyParameters,
+  progress?: (done: number, total: number) => void,
+): ErrorBudget {
+  const context = model.context(p);
+  const factors = scaleFactors(context.data, p.scales, model.library);
+  const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
+  const steps = sensitivitySteps(context, p);
+  const sources = errorSources(context, p);
+  const total = 1 + 2 * (steps.length + sources);
+  let done = 0;
+  let counts: SolverCounts | undefined;
+  const run = (where: RunContext, how: RunInputs) => {
+    const { names, values, counts: spent } = model.evaluate(where, how);
+    counts = counts ? addCounts(counts, spent) : spent;
+    progress?.(++done, total);
+    return { names, values };
+  };
+
+  const central = run(context, inputs);
+  const kept = central.names.flatMap((_, i) => (central.values[i] > 0 ? [i] : []));
+  const names = kept.map((i) => central.names[i]);
+  const values = kept.map((i) => central.values[i]);
+  const at = (where: RunContext, how: RunInputs) => {
+    const all = run(where, how).values;
+    return kept.map((i) => all[i]);
+  };
+
+  const reactionIndex = new Map([WEAK_REACTION, ...context.data.reactions.map((r) => r.id)].map((id, i) => [id, i]));
+  const slopes = centralSensitivities(steps, (name, value) => {
+    if (name === "omegaB") return at(context, { ...inputs, eta10: value });
+    if (name === "tauN") return at(context, { ...inputs, tauN: value });
+    if (name === "nEff") return at(model.context({ ...p, deltaNEff: value }), inputs);
+    if (name === "G") return at(model.context(p, value), inputs);
+    const scaled = factors.slice();
+    scaled[reactionIndex.get(name) as number] *= value;
+    return at(context, { ...inputs, factors: scaled });
+  });
+  const linear = propagateLinearly(values, sources, (s, sign) => {
+    const variations = new Float64Array(sources);
+    variations[s] = sign;
+    return at(context, applyVariations(context, inputs, p, variations));
+  });
+
+  const list = listErrorSources(context, p);
+  const byName = <T>(value: (x: number) => T): Record<string, T> =>
+    Object.fromEntries(names.map((name, x) => [name, value(x)]));
+  return {
+    abundances: byName((x) => ({ value: values[x], sigma: linear.sigma[x] })),
+    sensitivities: byName((x) => Object.fromEntries(steps.map(({ name }, k) => [name, slopes[k][x]]))),
+    variance: byName((x) => {
+      const whole = linear.covariance[x * names.length + x];
+      return Object.fromEntries(list.map(({ name }, s) => [name, whole > 0 ? linear.response[s][x] ** 2 / whole : 0]));
+    }),
+    correlation: { order: names, matrix: linear.correlation },
+    sources: list,
+    nEffComputed: context.history.nEffComputed,
+    counts: counts as SolverCounts,
+  };
+}
