@@ -24,7 +24,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[]>> = {
     ...["nuclear", "parameters", "background", "weak", "network", "nucleosynthesis"],
     ...["recombination", "lineofsight", "uncertainty"],
   ],
-  inference: ["parameters", "numerics", "model", "uncertainty"],
+  inference: [...lowest, "nuclear", "parameters", "nucleosynthesis", "model", "uncertainty"],
 };
 const physics = Object.keys(MAY_IMPORT);
 const TABLE: typeof MAY_IMPORT = {
