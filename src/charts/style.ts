@@ -233,6 +233,19 @@ export interface LabelFrame {
   readonly height: number;
 }
 
+/** Height of a curve where it crosses x, straight in the logarithms; undefined where it does not reach or has a gap. */
+function heightAt(points: readonly Point[], x: number): number | undefined {
+  for (let i = 0; i < points.length; i++) {
+    const [p, q] = [points[i], points[Math.min(i + 1, points.length - 1)]];
+    if ((p.x - x) * (q.x - x) > 0 || p.y === null || q.y === null) continue;
+    if (p.x === x) return p.y;
+    if (q.x === x) return q.y;
+    const share = Math.log(x / p.x) / Math.log(q.x / p.x);
+    return p.y * (q.y / p.y) ** share;
+  }
+  return undefined;
+}
+
 /**
  * Labels in the colour of their curves: right of the axes where a curve reaches the end, else above its highest point,
  * or near its foot if it falls from the start.
@@ -249,12 +262,14 @@ export function curveLabels(curves: readonly Curve[], frame: LabelFrame): Record
         p.y !== null && p.y >= frame.y.min && p.x >= frame.x.min && p.x <= frame.x.max,
     ),
   }));
-  const isEnd = (x: number) => Math.abs(Math.log(x / end)) < 0.02 * Math.log(frame.x.max / frame.x.min);
   const drawn = visible.filter(({ points }) => points.length > 0);
-  const ending = drawn.filter(({ points }) => points.some((p) => isEnd(p.x)));
-  const inner = drawn.filter((item) => !ending.includes(item));
+  const ending = drawn.flatMap(({ curve }) => {
+    const y = heightAt(curve.points, end);
+    return y !== undefined && y >= frame.y.min ? [{ curve, y: Math.min(y, frame.y.max) }] : [];
+  });
+  const inner = drawn.filter(({ curve }) => !ending.some((item) => item.curve === curve));
   const heights = spreadApart(
-    ending.map(({ points }) => fraction(points.filter((p) => isEnd(p.x)).at(-1)!.y)),
+    ending.map(({ y }) => fraction(y)),
     (SIZES.label + 3) / frame.height,
   );
   const labels: Record<string, AnnotationOptions<"label">> = {};

@@ -1,4 +1,5 @@
 /** A sheet to draw charts on, as png, svg or pdf: one native canvas, of which each chart gets a rectangle. */
+import { createHash } from "node:crypto";
 import { createCanvas, PDFDocument, type SKRSContext2D, SvgExportFlag } from "@napi-rs/canvas";
 
 /** File formats of a figure. */
@@ -44,16 +45,33 @@ function open(format: ImageFormat, width: number, height: number, title: string)
   if (format === "svg") {
     // Letters become outlines: the file looks the same where the font is not installed.
     const canvas = createCanvas(width, height, SvgExportFlag.ConvertTextToPaths);
-    return { context: canvas.getContext("2d"), scale: 1, finish: () => withTitle(canvas.getContent(), title) };
+    return {
+      context: canvas.getContext("2d"),
+      scale: 1,
+      finish: () => completeSvg(canvas.getContent(), title, width, height),
+    };
   }
   const canvas = createCanvas(width * PNG_SCALE, height * PNG_SCALE);
   return { context: canvas.getContext("2d"), scale: PNG_SCALE, finish: () => canvas.toBuffer("image/png") };
 }
 
-/** The title as an element, which screen readers and browsers show. */
-function withTitle(svg: Buffer, title: string): Buffer {
+/**
+ * The svg with a title, which screen readers and browsers show, a viewBox, so that it scales, and names of its own for
+ * its clip paths: the canvas numbers them through the whole process, and two figures on one page must not share any.
+ */
+function completeSvg(svg: Buffer, title: string, width: number, height: number): Buffer {
   const escaped = title.replaceAll("&", "&amp;").replaceAll("<", "&lt;");
-  return Buffer.from(svg.toString("utf8").replace(/(<svg[^>]*>)/, `$1<title>${escaped}</title>`));
+  const names = new Map<string, string>();
+  const numbered = svg.toString("utf8").replace(/\bcl_[0-9a-f]+\b/g, (name) => {
+    if (!names.has(name)) names.set(name, `clip-${names.size + 1}`);
+    return names.get(name) as string;
+  });
+  const own = createHash("sha256").update(numbered).digest("hex").slice(0, 8);
+  return Buffer.from(
+    numbered
+      .replace(/\bclip-(?=\d+\b)/g, `clip-${own}-`)
+      .replace(/<svg([^>]*)>/, `<svg$1 viewBox="0 0 ${width} ${height}"><title>${escaped}</title>`),
+  );
 }
 
 /**

@@ -40,7 +40,7 @@ export function cosmologyLines(c: CosmologyParameters): string[] {
   const lines = entry("cosmology", parts.map(held).join(", "));
   if (c.expansion.trim() !== "1") lines.push(...entry("expansion", `H(T) times ${c.expansion}`));
   const scaled = Object.entries(c.scales).map(([id, factor]) => held(`${id} x ${factor}`));
-  if (scaled.length > 0) lines.push(...entry("scaled rates", scaled.join(", ")));
+  if (scaled.length > 0) lines.push(...entry("scaled", scaled.join(", ")));
   return lines;
 }
 
