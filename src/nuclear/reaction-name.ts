@@ -152,8 +152,8 @@ export function resolveReaction(name: string, known: Iterable<string>, what = "r
   try {
     wanted = parseReactionName(name);
     if (ids.includes(wanted)) return wanted;
-    const { reactants, products } = parseReactionId(wanted);
-    if (products.length > 1) {
+    const { reactants, products, isDecay } = parseReactionId(wanted);
+    if (!isDecay && products.length > 1) {
       const forward = makeReaction(products, reactants).id;
       if (ids.includes(forward))
         throw new InputError(
