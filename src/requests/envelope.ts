@@ -14,8 +14,11 @@ export type {
   SolverReport,
 } from "../output/result.ts";
 
-/** Told while a long request runs: the share done, 0 to 1, and what is being done. */
-export type Progress = (share: number, what: string) => void;
+/**
+ * Told while a long request runs: the share done, 0 to 1, what is being done, and how many of it there are in all, so
+ * that a rate can be shown.
+ */
+export type Progress = (share: number, what: string, total?: number) => void;
 
 /**
  * The one object every command answers with; warnings appear once each.

@@ -1,0 +1,101 @@
+/** One point of a scan or grid: the abundances, and how they respond to sources of error. */
+import { applyVariations, errorSources, type Model, scaleFactors, validityWarnings } from "../model/prepare.ts";
+import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
+import { addCounts, type RunInputs } from "../nucleosynthesis/run.ts";
+import { CalculationError, InputError } from "../numerics/check.ts";
+import type { SolverCounts } from "../numerics/ode-stiff.ts";
+import type { Keys } from "../parameters/cosmology.ts";
+
+/** What is asked at one point. */
+export interface PointQuestion {
+  readonly overrides: Keys;
+  /** How the point is named in the message of a failure, e.g. `eta10 = 3`. */
+  readonly where: string;
+  /** Whether the abundances at the point itself are wanted. */
+  readonly values: boolean;
+  /** Sources of error whose responses are wanted, by number as in {@link applyVariations}. */
+  readonly sources?: readonly number[];
+  /** Differences of the responses: `central` at p = +-1, the definition of the linear error; `forward`, half the cost. */
+  readonly differences?: "central" | "forward";
+  /** Whether the errors are those of the model's own error analysis (samples), one sigma an abundance. */
+  readonly sigma?: boolean;
+}
+
+/** Plain numbers, so that an answer travels between threads and through a checkpoint unchanged. */
+export interface PointAnswer {
+  readonly values?: readonly number[];
+  readonly sigma?: readonly number[];
+  /** responses[s][x] = d ln x/dp of the s-th source asked for; 0 where an abundance is 0. */
+  readonly responses?: readonly (readonly number[])[];
+  readonly counts: SolverCounts;
+  readonly warnings: readonly string[];
+}
+
+/** What does not differ from point to point. */
+export interface PointFrame {
+  readonly names: readonly AbundanceName[];
+  /** Number of independent sources of error. */
+  readonly sources: number;
+}
+
+/**
+ * Answers a question about one point. The abundances are those of a single run, to the last bit.
+ * @throws {InputError | CalculationError} naming what failed
+ */
+export function answerPoint(model: Model, question: PointQuestion): PointAnswer {
+  try {
+    return answer(model, question);
+  } catch (error) {
+    if (error instanceof InputError) throw new InputError(error.code, `at ${question.where}: ${error.message}`);
+    if (error instanceof CalculationError)
+      throw new CalculationError(error.code, `at ${question.where}: ${error.message}`);
+    throw error;
+  }
+}
+
+function answer(model: Model, question: PointQuestion): PointAnswer {
+  const p = model.parameters(question.overrides);
+  if (question.sigma === true) {
+    const run = model.abundances(question.overrides);
+    const estimates = Object.values(run.abundances);
+    return {
+      values: estimates.map((estimate) => estimate.value),
+      sigma: estimates.map((estimate) => estimate.sigma ?? 0),
+      counts: withoutTolerance(run.solver),
+      warnings: run.warnings,
+    };
+  }
+  const context = model.context(p);
+  const factors = scaleFactors(context.data, p.scales, model.library);
+  const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
+  let counts: SolverCounts = { steps: 0, rejected: 0, rhs: 0, jacobians: 0, factorisations: 0 };
+  const run = (given: RunInputs) => {
+    const found = model.evaluate(context, given);
+    counts = addCounts(counts, found.counts);
+    return found.values;
+  };
+  const forward = question.differences === "forward";
+  const central = question.values || (forward && question.sources !== undefined) ? run(inputs) : undefined;
+  const total = errorSources(context, p);
+  const varied = (source: number, sign: number) => {
+    const variations = new Float64Array(total);
+    variations[source] = sign;
+    return run(applyVariations(context, inputs, p, variations));
+  };
+  const responses = question.sources?.map((source) => {
+    const up = varied(source, 1);
+    const down = forward ? (central as readonly number[]) : varied(source, -1);
+    const width = forward ? 1 : 2;
+    return up.map((x, i) => (x > 0 && down[i] > 0 ? (Math.log(x) - Math.log(down[i])) / width : 0));
+  });
+  return {
+    ...(question.values ? { values: central } : {}),
+    ...(responses ? { responses } : {}),
+    counts,
+    warnings: validityWarnings(p),
+  };
+}
+
+function withoutTolerance({ steps, rejected, rhs, jacobians, factorisations }: SolverCounts): SolverCounts {
+  return { steps, rejected, rhs, jacobians, factorisations };
+}
