@@ -27,8 +27,15 @@ const COMMANDS: readonly CommandSpec[] = [
     name: "history",
     summary: "temperatures, expansion, weak rates and every nuclide through the first hours",
     options: () => [...nucleosynthesisOptions(), ...outputOptions(["temperature", "weak", "abundances"])],
-    example: "emberline history --network twelve --chart history.svg --format csv --out history.csv",
+    example: "emberline history --network twelve --chart history.svg --out history.txt",
     load: () => import("./commands/history.ts"),
+  },
+  {
+    name: "budget",
+    summary: "where each abundance's error comes from, and its sensitivity to every parameter and rate",
+    options: () => [...nucleosynthesisOptions(), ...outputOptions(["helium", "deuterium", "helium3", "lithium"])],
+    example: "emberline budget --chart budget.png",
+    load: () => import("./commands/budget.ts"),
   },
 ];
 const DEFAULT_COMMAND = "abundances";
@@ -74,7 +81,9 @@ const REMEDIES: Readonly<Record<string, string>> = {
 
 /** A request speaks of keys, `network = x`; on the command line they are options, `--network x`. */
 function nameOptions(message: string): string {
-  return message.replace(/^(network|expansion|errors|samples|seed|tolerance|rates|scale) (?:= )?/, "--$1 ");
+  return message
+    .replace(/^(network|errors|samples|seed|tolerance|rates|scale) (?:= )?/, "--$1 ")
+    .replace(/^expansion /, "--expansion ");
 }
 
 /** One line for an error, and the exit status. */
