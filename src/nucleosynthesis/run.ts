@@ -8,6 +8,7 @@ import { luFactor, luSolve } from "../numerics/linear.ts";
 import { type SolverCounts, type StiffOptions, StiffStepper, type StiffSystem } from "../numerics/ode-stiff.ts";
 import type { WeakTable } from "../weak/table.ts";
 import { type Clock, networkTable, sampleClock, TABLE_INTERVALS, weakOnlyTable } from "./coefficients.ts";
+import { absoluteTolerances } from "./error-scale.ts";
 import { type FluxTable, resample } from "./flux-table.ts";
 import { marchAdaptively } from "./march-run.ts";
 import { type NetworkData, WEAK_REACTION } from "./network-data.ts";
@@ -102,7 +103,7 @@ export const WEAK_NETWORK = compileNetwork(["n", "p"], [{ id: WEAK_REACTION, rea
 export const WEAK_KERNELS = loopKernels(WEAK_NETWORK);
 
 /** Factor of each flux: the power of eta10 it grows with, the factor of its reaction, 1/tau_n for n <-> p. */
-function fluxScale(network: CompiledNetwork, table: FluxTable, inputs: RunInputs): Float64Array {
+export function fluxScale(network: CompiledNetwork, table: FluxTable, inputs: RunInputs): Float64Array {
   const scale = new Float64Array(network.fluxes);
   for (let f = 0; f < network.fluxes; f++)
     scale[f] = inputs.eta10 ** table.etaPowers[f] * (inputs.factors?.[f >> 1] ?? 1) * (f < 2 ? 1 / inputs.tauN : 1);
@@ -180,12 +181,16 @@ export function networkSystem(
 /** Tolerance below which the fifth-order method is the cheaper one. */
 const FIFTH_ORDER_BELOW = 3e-5;
 
-/** Absolute tolerance of each nuclide: rtol times a floor, so that traces are followed relatively down to it. */
+/** Method and tolerances of a run: fourth order when loose, fifth when tight, absolute tolerances by size. */
 export function tolerances(data: NetworkData, inputs: RunInputs): StiffOptions {
   const rtol = inputs.tolerance;
   return {
     rtol,
-    atol: new Float64Array(data.nuclides.length).fill(rtol * 1e-15),
+    atol: absoluteTolerances(
+      data.nuclides.map((x) => x.id),
+      inputs.eta10,
+      rtol,
+    ),
     method: inputs.method ?? (rtol < FIFTH_ORDER_BELOW ? "rodas5p" : "rodas4"),
     firstStep: 1e-3,
     maxSteps: 200000,

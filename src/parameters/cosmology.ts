@@ -97,7 +97,7 @@ export const DEFAULTS = {
   errors: "linear",
   samples: 0,
   seed: 1,
-  tolerance: 3e-4,
+  tolerance: 2e-4,
 } as const;
 
 /** Accepted range, unit and meaning of every numeric key. */
