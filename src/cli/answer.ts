@@ -1,5 +1,5 @@
 /** What every command does: keys and rates in, one request, then charts and the result out. */
-import type { Figure } from "../charts/figure.ts";
+import type { AnyChart, Figure } from "../charts/figure.ts";
 import { loadRates } from "../node/load-rates.ts";
 import { printNotice, printResult } from "../node/print.ts";
 import { requireWritable, writeWhole } from "../node/write-file.ts";
@@ -21,7 +21,7 @@ export interface AnswerSpec<Results> {
   readonly table: (results: Results) => Table;
   readonly describe?: (results: Results) => Readonly<Record<string, string>>;
   /** The command's figure: all panels, or the one of that name. */
-  readonly figure?: (answer: Envelope<Results>, name?: string) => Figure;
+  readonly figure?: (answer: Envelope<Results>, name?: string) => Figure<AnyChart>;
 }
 
 function notes(answer: Envelope): string[] {

@@ -7,7 +7,7 @@ import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import { type CosmologyParameters, DEFAULTS, RANGES } from "../parameters/cosmology.ts";
 import { propagateLinearly } from "../uncertainty/propagation.ts";
 import { type CentralStep, centralSensitivities, relativeStep } from "../uncertainty/sensitivity.ts";
-import { applyVariations, errorSources, type Estimate, type Model, scaleFactors } from "./prepare.ts";
+import { applyVariations, type Estimate, errorSources, type Model, scaleFactors } from "./prepare.ts";
 
 /** Shares by which a parameter is moved to either side; N_eff by an amount. */
 export const SENSITIVITY_STEPS = { omegaB: 0.02, tauN: 0.02, G: 0.02, rate: 0.05, nEff: 0.06 } as const;
@@ -137,4 +137,19 @@ export function computeErrorBudget(
     nEffComputed: context.history.nEffComputed,
     counts: counts as SolverCounts,
   };
+}
+
+/** Whether the size of an error is neither published nor given by the user. */
+export function isAssumed(source: ErrorSource): boolean {
+  return source.basis === "assumed" || source.basis === "from memory";
+}
+
+/** Sources of an abundance's error by falling share of its variance. @param abundance one that the budget holds */
+export function sortedShares(
+  { sources, variance }: Pick<ErrorBudget, "sources" | "variance">,
+  abundance: string,
+): { readonly source: ErrorSource; readonly share: number }[] {
+  return sources
+    .map((source) => ({ source, share: variance[abundance][source.name] }))
+    .sort((a, b) => b.share - a.share);
 }

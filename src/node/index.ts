@@ -1,5 +1,5 @@
 /** The library on Node: the public names of the browser library, with rates/ read from disk and charts as files. */
-import type { Figure } from "../charts/figure.ts";
+import type { AnyChart, Figure } from "../charts/figure.ts";
 import type { Model } from "../model/prepare.ts";
 import type { Keys } from "../parameters/cosmology.ts";
 import { computeAbundances } from "../requests/abundances.ts";
@@ -41,6 +41,6 @@ export async function history(keys: Keys = {}, { rates }: RatesOption = {}): Pro
  * A figure as the content of a file, png, svg or pdf by the ending of its name; the canvas is loaded at the first call.
  * @throws {InputError} for another ending
  */
-export async function renderFigure(figure: Figure, file: string): Promise<Buffer> {
+export async function renderFigure(figure: Figure<AnyChart>, file: string): Promise<Buffer> {
   return (await import("./render-chart.ts")).renderFigure(figure, file);
 }

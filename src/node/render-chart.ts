@@ -4,7 +4,7 @@ import { dirname, join } from "node:path";
 import { GlobalFonts } from "@napi-rs/canvas";
 import type { ChartConfiguration } from "chart.js";
 import { ChartJSNodeCanvas } from "chartjs-node-canvas";
-import { type Figure, NOTE_HEIGHT } from "../charts/figure.ts";
+import { type AnyChart, type Figure, NOTE_HEIGHT } from "../charts/figure.ts";
 import { FONT_FAMILY, MUTED, SIZES } from "../charts/style.ts";
 import { CalculationError, InputError } from "../numerics/check.ts";
 import { type ImageFormat, openSurface, type RegionCanvas } from "./surface.ts";
@@ -60,7 +60,7 @@ export function imageFormat(file: string): ImageFormat {
  * @returns the content of the file, the same at every call with the same figure
  * @throws {InputError} for another ending
  */
-export function renderFigure(figure: Figure, file: string): Buffer {
+export function renderFigure(figure: Figure<AnyChart>, file: string): Buffer {
   const surface = openSurface(imageFormat(file), figure.width, figure.height, figure.title, MUTED.paper);
   const renderer = theRenderer();
   for (const panel of figure.panels) {
