@@ -41,6 +41,6 @@ export async function history(keys: Keys = {}, { rates }: RatesOption = {}): Pro
  * A figure as the content of a file, png, svg or pdf by the ending of its name; the canvas is loaded at the first call.
  * @throws {InputError} for another ending
  */
-export async function renderFigure(figure: Figure<AnyChart>, file: string): Promise<Buffer> {
+export async function renderFigure(figure: Figure<AnyChart>, file: string): Promise<Uint8Array> {
   return (await import("./render-chart.ts")).renderFigure(figure, file);
 }
