@@ -55,13 +55,21 @@ export interface NuclearRun {
   readonly counts: SolverCounts;
 }
 
-/** Joins a network, a thermal history and weak rates. */
-export function prepareRun(data: NetworkData, history: ThermalHistory, weak: WeakTable): RunContext {
+/**
+ * Joins a network, a thermal history and weak rates.
+ * @param intervals of the flux table, for convergence tests
+ */
+export function prepareRun(
+  data: NetworkData,
+  history: ThermalHistory,
+  weak: WeakTable,
+  intervals = TABLE_INTERVALS,
+): RunContext {
   const sWeak = -Math.log(mevToT9(WEAK_START_MEV));
   const sStart = -Math.log(mevToT9(NETWORK_START_MEV));
   const sEnd = -Math.log(END_T9);
   const weakIntervals = 256;
-  const clock = sampleClock(history, sStart, sEnd, TABLE_INTERVALS);
+  const clock = sampleClock(history, sStart, sEnd, intervals);
   return {
     data,
     history,
