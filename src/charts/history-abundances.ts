@@ -1,10 +1,10 @@
 /** Chart: share of the nucleons in each nuclide, A_i n_i/n_b, against time. */
 import { formatNuclide, nuclideNumbers } from "../nuclear/nuclide.ts";
 import { numericColumn, type Table } from "../numerics/table.ts";
+import { curveLabels } from "./curve-labels.ts";
 import type { HistoryMarks, LineChart } from "./figure.ts";
 import {
   type Curve,
-  curveLabels,
   DASHES,
   linePanel,
   logAxis,

@@ -1,7 +1,8 @@
 /** Chart: temperature of photons and neutrinos against time, and their ratio below. */
 import { numericColumn, type Table } from "../numerics/table.ts";
+import { curveLabels } from "./curve-labels.ts";
 import type { LineChart } from "./figure.ts";
-import { type Curve, curveLabels, DASHES, linearAxis, linePanel, logAxis, MARGINS, PALETTE } from "./style.ts";
+import { type Curve, DASHES, linearAxis, linePanel, logAxis, MARGINS, PALETTE } from "./style.ts";
 
 /** Shares of the height: temperatures, ratio. */
 const WEIGHTS = { y: 5, yRatio: 2 } as const;

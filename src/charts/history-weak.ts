@@ -1,10 +1,10 @@
 /** Chart: weak rates and expansion rate against temperature, and the neutron-to-proton ratio below. */
 import { NEUTRON_PROTON_MASS_DIFFERENCE } from "../constants/codata.ts";
 import { numericColumn, type Table } from "../numerics/table.ts";
+import { curveLabels } from "./curve-labels.ts";
 import type { HistoryMarks, LineChart } from "./figure.ts";
 import {
   type Curve,
-  curveLabels,
   DASHES,
   linePanel,
   logAxis,

@@ -1,7 +1,8 @@
 // The shared look: power labels, distances between labels, points that run to the edges.
 import fc from "fast-check";
 import { expect, test } from "vitest";
-import { type Curve, curveLabels, PALETTE, pointsWithin, powerLabel, spreadApart } from "../../../src/charts/style.ts";
+import { curveLabels } from "../../../src/charts/curve-labels.ts";
+import { type Curve, PALETTE, pointsWithin, powerLabel, spreadApart } from "../../../src/charts/style.ts";
 
 test("decades are written as powers of ten", () => {
   expect([1e-12, 0.1, 1, 10, 1000].map(powerLabel)).toEqual(["10⁻¹²", "10⁻¹", "1", "10", "10³"]);
