@@ -1,4 +1,4 @@
-/** Thomson optical depth, drag depth and conformal time along the line of sight, cumulated over the steps of a history. */
+/** Thomson optical depth, drag depth, conformal time and photon diffusion along the line of sight, cumulated over the steps of a history. */
 import { LIGHT_SPEED } from "../constants/codata.ts";
 import { CM_PER_METRE, CM2_PER_M2, METRE_PER_MPC } from "../constants/units.ts";
 import { intervalOf } from "../numerics/interpolate.ts";
@@ -6,7 +6,7 @@ import { gaussLegendre } from "../numerics/quadrature.ts";
 import { findRoot } from "../numerics/roots.ts";
 import { RECOMBINATION_VALUES } from "../recombination/atomic.ts";
 import { type IonisationHistory, Z_TOP } from "../recombination/history.ts";
-import { reionisedElectrons, totalElectrons } from "../recombination/reionisation.ts";
+import { totalElectrons } from "../recombination/reionisation.ts";
 import { conformalTime } from "./distances.ts";
 import { baryonLoading } from "./sound-horizon.ts";
 
@@ -16,7 +16,7 @@ export interface LineOfSight {
   readonly zRe: number | undefined;
   /** Edges of the panels, ascending. */
   readonly edges: Float64Array;
-  /** Optical depth of recombination alone and of reionisation alone at the edges. */
+  /** Optical depth of recombination alone at the edges. */
   readonly depthAtEdges: Float64Array;
   /** tau from today, residual ionisation included; with reionisation if there is one and `total`. */
   opticalDepth(logZ: number, total?: boolean): number;
@@ -24,6 +24,8 @@ export interface LineOfSight {
   dragDepth(logZ: number): number;
   /** Conformal time since the beginning [Mpc]. */
   conformalTime(logZ: number): number;
+  /** int_z^(Z_TOP) c dz/H [R^2 + (16/15)(1 + R)]/[6 (1 + R)^2 a n_e sigma_T], without reionisation [Mpc^2]. */
+  diffusion(logZ: number): number;
   /** d tau/d ln(1 + z). */
   scattering(logZ: number, total?: boolean): number;
   /** x_e, with reionisation if there is one and `total`. */
@@ -32,7 +34,7 @@ export interface LineOfSight {
   unitDepth(which: "optical" | "drag"): number;
 }
 
-const POINTS = 5;
+const POINTS = 4;
 /** Widest panel in ln(1 + z). */
 const WIDEST = 0.1;
 
@@ -41,13 +43,26 @@ const WIDEST = 0.1;
  * @returns function of ln(1 + z)
  */
 export function thomsonPerElectron(history: IonisationHistory): (logZ: number) => number {
-  const values = history.inputs.values ?? RECOMBINATION_VALUES;
-  const scale = LIGHT_SPEED.value * CM_PER_METRE * values.thomson * CM2_PER_M2 * history.nH0;
+  const scale = thomsonScale(history);
   const expansion = new Float64Array(2);
   return (logZ) => {
     history.background.hubbleAndSlope(-logZ, expansion);
     return (scale * Math.exp(3 * logZ)) / expansion[0];
   };
+}
+
+/** c sigma_T n_H today [1/s]. */
+function thomsonScale(history: IonisationHistory): number {
+  const values = history.inputs.values ?? RECOMBINATION_VALUES;
+  return LIGHT_SPEED.value * CM_PER_METRE * values.thomson * CM2_PER_M2 * history.nH0;
+}
+
+/**
+ * Weight of photon diffusion, [R^2 + (16/15)(1 + R)]/[6 (1 + R)^2].
+ * @see Kaiser 1983, MNRAS 202, 1169; Zaldarriaga & Harari 1995, PRD 52, 3276
+ */
+export function diffusionWeight(R: number): number {
+  return (R * R + (16 / 15) * (1 + R)) / (6 * (1 + R) * (1 + R));
 }
 
 /** Panel edges: the steps of the integration below its start, then even panels; finer where reionisation happens. */
@@ -65,15 +80,19 @@ function panelEdges(history: IonisationHistory, zRe: number | undefined): Float6
   return Float64Array.from([...even(0, end, 0.02), end, ...edges.filter((x) => x > end + 1e-6)]);
 }
 
+/** Where each integral stands in the sums of a panel. */
+const SUM = { depth: 0, drag: 1, path: 2, diffusion: 3, reionised: 4, size: 5 } as const;
+
 /**
- * Cumulates, over the panels of a history and by 5-point Gauss rules,
- * tau(z) = int c sigma_T n_e dt, the drag depth int c sigma_T n_e/R dt and conformal time int c dt/a.
+ * Cumulates, over the panels of a history and by 4-point Gauss rules,
+ * tau(z) = int c sigma_T n_e dt, the drag depth int c sigma_T n_e/R dt, conformal time int c dt/a, and diffusion.
  *
  * @param zRe redshift of reionisation, if any
  * @returns accuracy 1e-7 in tau relative to x_e as given, 1e-9 in conformal time
  */
 export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSight {
   const { background, inputs } = history;
+  const scale = thomsonScale(history);
   const perElectron = thomsonPerElectron(history);
   const R0 = baryonLoading(background);
   const edges = panelEdges(history, zRe);
@@ -82,13 +101,14 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
   const depth = new Float64Array(n);
   const drag = new Float64Array(n);
   const path = new Float64Array(n);
-  const extra = new Float64Array(n);
+  const diffusion = new Float64Array(n);
+  const reionised = new Float64Array(n);
   const expansion = new Float64Array(2);
   const lightMpc = LIGHT_SPEED.value / METRE_PER_MPC;
   // Panels are those of the history where it was integrated: the interval is known without a search.
   const sameGrid = inputs.model !== "saha" && zRe === undefined;
   const solvedPanels = history.logZ.length - 1;
-  const sums = new Float64Array(4);
+  const sums = new Float64Array(SUM.size);
 
   function panel(from: number, to: number, interval: number | undefined): void {
     const half = (to - from) / 2;
@@ -99,25 +119,32 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
       const w = weights[k] * half;
       const onePlusZ = Math.exp(x);
       background.hubbleAndSlope(-x, expansion);
-      const thomson = perElectron(x);
+      const thomson = (scale * onePlusZ * onePlusZ * onePlusZ) / expansion[0];
       const xe = history.xeAt(x, interval);
-      sums[0] += w * thomson * xe;
-      sums[1] += (w * thomson * xe * onePlusZ) / R0;
-      sums[2] += (w * lightMpc * onePlusZ) / expansion[0];
+      const R = R0 / onePlusZ;
+      // c (1+z)/H: comoving distance per ln(1 + z); its square over d tau/d ln(1 + z) is that of the diffusion.
+      const step = (lightMpc * onePlusZ) / expansion[0];
+      sums[SUM.depth] += w * thomson * xe;
+      sums[SUM.drag] += (w * thomson * xe) / R;
+      sums[SUM.path] += w * step;
+      sums[SUM.diffusion] += (w * diffusionWeight(R) * step * step) / (thomson * xe);
       if (zRe !== undefined) {
         const z = onePlusZ - 1;
-        sums[3] += w * thomson * (totalElectrons(xe, z, zRe, inputs.fHe) - xe);
+        sums[SUM.reionised] += w * thomson * (totalElectrons(xe, z, zRe, inputs.fHe) - xe);
       }
     }
   }
 
   for (let i = 1; i < n; i++) {
     panel(edges[i - 1], edges[i], sameGrid && i <= solvedPanels ? i - 1 : undefined);
-    depth[i] = depth[i - 1] + sums[0];
-    drag[i] = drag[i - 1] + sums[1];
-    path[i] = path[i - 1] + sums[2];
-    extra[i] = extra[i - 1] + sums[3];
+    depth[i] = depth[i - 1] + sums[SUM.depth];
+    drag[i] = drag[i - 1] + sums[SUM.drag];
+    path[i] = path[i - 1] + sums[SUM.path];
+    diffusion[i - 1] = sums[SUM.diffusion];
+    reionised[i] = reionised[i - 1] + sums[SUM.reionised];
   }
+  // Summed from the top, where it is small, down: from today up its first terms would drown the rest.
+  for (let i = n - 2; i >= 0; i--) diffusion[i] += diffusion[i + 1];
   const etaTop = conformalTime(background, Z_TOP);
   const pathTop = path[n - 1];
 
@@ -140,34 +167,20 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
     edges,
     depthAtEdges: depth,
     xe,
-    opticalDepth: (x, total = true) => upTo(depth, 0, x) + (total && zRe !== undefined ? upTo(extra, 3, x) : 0),
-    dragDepth: (x) => upTo(drag, 1, x),
-    conformalTime: (x) => etaTop + pathTop - upTo(path, 2, x),
+    opticalDepth: (x, total = true) =>
+      upTo(depth, SUM.depth, x) + (total && zRe !== undefined ? upTo(reionised, SUM.reionised, x) : 0),
+    dragDepth: (x) => upTo(drag, SUM.drag, x),
+    conformalTime: (x) => etaTop + pathTop - upTo(path, SUM.path, x),
+    diffusion(x) {
+      const i = intervalOf(edges, x);
+      panel(x, edges[i + 1], undefined);
+      return diffusion[i + 1] + sums[SUM.diffusion];
+    },
     scattering: (x, total = true) => perElectron(x) * xe(x, total),
     unitDepth(which) {
-      const cumulated = which === "optical" ? depth : drag;
+      const [cumulated, sum] = which === "optical" ? [depth, SUM.depth] : [drag, SUM.drag];
       const i = intervalOf(cumulated, 1);
-      return findRoot((x) => upTo(cumulated, which === "optical" ? 0 : 1, x) - 1, edges[i], edges[i + 1], 1e-10);
+      return findRoot((x) => upTo(cumulated, sum, x) - 1, edges[i], edges[i + 1], 1e-10);
     },
   };
-}
-
-/**
- * Optical depth of reionisation, int c sigma_T n_H x_re dt with the electrons of the tanh form alone (the residual of
- * recombination, about 2e-4 per atom, is not counted).
- * @param zRe redshift of reionisation
- */
-export function reionisationDepth(history: IonisationHistory, zRe: number): number {
-  const perElectron = thomsonPerElectron(history);
-  const { fHe } = history.inputs;
-  const top = Math.log1p(zRe + 12);
-  const { nodes, weights } = gaussLegendre(POINTS);
-  const panels = Math.ceil(top / 0.03);
-  let sum = 0;
-  for (let i = 0; i < panels; i++)
-    for (let k = 0; k < POINTS; k++) {
-      const x = (top / panels) * (i + 0.5 + nodes[k] / 2);
-      sum += (weights[k] / 2) * (top / panels) * perElectron(x) * reionisedElectrons(Math.expm1(x), zRe, fHe);
-    }
-  return sum;
 }

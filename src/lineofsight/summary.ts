@@ -1,14 +1,14 @@
 /** The numbers of last scattering and baryon drag that an ionisation history implies. */
 import { ageAt } from "../background/expansion.ts";
 import { SECONDS_PER_JULIAN_YEAR } from "../constants/units.ts";
-import { CalculationError, InputError } from "../numerics/check.ts";
-import { intervalOf } from "../numerics/interpolate.ts";
+import { CalculationError } from "../numerics/check.ts";
 import { findRoot } from "../numerics/roots.ts";
-import type { IonisationHistory } from "../recombination/history.ts";
+import { type IonisationHistory, Z_TOP } from "../recombination/history.ts";
 import type { RecombinationInputs } from "../recombination/inputs.ts";
 import { dampingWavenumber } from "./damping.ts";
 import { comovingDistance } from "./distances.ts";
-import { type LineOfSight, lineOfSight, reionisationDepth } from "./optical-depth.ts";
+import { type LineOfSight, lineOfSight } from "./optical-depth.ts";
+import { reionisationDepth, reionisationRedshift } from "./reionisation-depth.ts";
 import { soundHorizon } from "./sound-horizon.ts";
 import { type VisibilitySummary, visibilitySummary } from "./visibility.ts";
 
@@ -49,25 +49,6 @@ export interface LineOfSightResult {
 }
 
 /**
- * Redshift of reionisation: as given, or the one whose tanh form has the optical depth asked for.
- * @returns undefined if there is none (tauReion = 0 included)
- * @throws {InputError} if no redshift up to 100 gives that depth
- */
-export function reionisationRedshift(inputs: RecombinationInputs, history: IonisationHistory): number | undefined {
-  if (inputs.zReion !== undefined) return inputs.zReion;
-  const tau = inputs.tauReion;
-  if (tau === undefined || tau === 0) return undefined;
-  const lowest = reionisationDepth(history, 0);
-  const highest = reionisationDepth(history, 100);
-  if (tau < lowest || tau > highest)
-    throw new InputError(
-      "range",
-      `tauReion = ${tau}: reionisation of tanh form between z = 0 and 100 gives ${lowest.toPrecision(3)} to ${highest.toPrecision(3)} in this cosmology; ask for a depth in that range, or for 0`,
-    );
-  return findRoot((z) => reionisationDepth(history, z) - tau, 0, 100, 1e-8);
-}
-
-/**
  * Optical depth, visibility, horizons and damping of a history.
  * @throws {CalculationError} if the optical depth does not reach 1 below z = 1e4
  * @throws {InputError} as {@link reionisationRedshift}
@@ -103,8 +84,8 @@ export function computeLineOfSight(inputs: RecombinationInputs, history: Ionisat
       ageAtStar_yr: ageAt(background, zStar) / SECONDS_PER_JULIAN_YEAR,
       temperatureAtStar_K: inputs.tCmb * (1 + zStar),
       xeAtZ: { "20": history.xeAt(Math.log1p(20)), "200": history.xeAt(Math.log1p(200)) },
-      zHalfIonisedSaha: halfIonised((x) => history.sahaXe(Math.expm1(x)), sight.edges),
-      zHalfIonised: halfIonised((x) => history.xeAt(x), sight.edges),
+      zHalfIonisedSaha: halfIonisedSaha(history),
+      zHalfIonised: halfIonised(history, sight.edges),
       visibility: visibilitySummary(sight),
       ...(zRe === undefined ? {} : { zReionisation: zRe, opticalDepthReionisation: reionisationDepth(history, zRe) }),
       ...(decoupling === undefined ? {} : { zThermalDecoupling: decoupling }),
@@ -112,11 +93,22 @@ export function computeLineOfSight(inputs: RecombinationInputs, history: Ionisat
   };
 }
 
-/** Redshift at which x_e falls below 1/2, searched on the panels from low redshift up. */
-function halfIonised(xe: (logZ: number) => number, edges: Float64Array): number {
-  let i = 1;
-  while (i < edges.length - 1 && xe(edges[i]) < 0.5) i++;
-  return Math.expm1(findRoot((x) => xe(x) - 0.5, edges[i - 1], edges[i], 1e-10));
+/** Redshift at which x_e of the history falls below 1/2; x_e falls from high redshift to low. */
+function halfIonised(history: IonisationHistory, edges: Float64Array): number {
+  let lo = 0;
+  let hi = edges.length - 1;
+  while (hi - lo > 1) {
+    const middle = (lo + hi) >> 1;
+    if (history.xeAt(edges[middle]) < 0.5) lo = middle;
+    else hi = middle;
+  }
+  return Math.expm1(findRoot((x) => history.xeAt(x) - 0.5, edges[lo], edges[hi], 1e-10));
+}
+
+/** The same in equilibrium. */
+function halfIonisedSaha(history: IonisationHistory): number {
+  const logarithm = (z: number) => Math.log(Math.max(history.sahaXe(z), 1e-300) / 0.5);
+  return findRoot(logarithm, 200, Z_TOP, 1e-7);
 }
 
 /** Redshift at which T_m/T_r falls below 0.9. */
@@ -126,9 +118,4 @@ function thermalDecoupling(history: IonisationHistory): number | undefined {
   let i = 1;
   while (history.temperatureRatioAt(logZ[i]) < 0.9) i++;
   return Math.expm1(findRoot((x) => history.temperatureRatioAt(x) - 0.9, logZ[i - 1], logZ[i], 1e-10));
-}
-
-/** Interval of the panels that holds ln(1 + z); for callers that tabulate. */
-export function panelOf(sight: LineOfSight, logZ: number): number {
-  return intervalOf(sight.edges, logZ);
 }

@@ -22,6 +22,7 @@ import {
   NUCLEOSYNTHESIS_CORRECTIONS,
   resolveParameters,
 } from "../parameters/cosmology.ts";
+import { RECOMBINATION_SWITCH_NAMES } from "../recombination/switches.ts";
 import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
 import { propagateLinearly } from "../uncertainty/propagation.ts";
 import type { WeakOptions } from "../weak/inputs.ts";
@@ -31,6 +32,13 @@ export interface Estimate {
   readonly value: number;
   readonly sigma?: number;
 }
+
+import {
+  type RecombinationResults,
+  type RecombinationRun,
+  recombinationResults,
+  runRecombination,
+} from "./recombination.ts";
 
 export interface AbundanceRun {
   readonly abundances: Partial<Record<AbundanceName, Estimate>>;
@@ -52,6 +60,10 @@ export interface Model {
   parameters(overrides?: Keys): CosmologyParameters;
   /** Abundances with the errors asked for by `errors`. Synchronous; throws InputError or CalculationError. */
   abundances(overrides?: Keys, progress?: (done: number, total: number) => void): AbundanceRun;
+  /** Last scattering and baryon drag; helium from the nucleosynthesis run of the same keys unless ypMass is given. */
+  recombination(overrides?: Keys): RecombinationResults;
+  /** The same with the history behind it. */
+  recombinationRun(overrides?: Keys): RecombinationRun;
   /** The run context (history, flux tables) for these keys, for commands that look inside. */
   context(parameters: CosmologyParameters, gravity?: number): RunContext;
   /** Rates in use for these keys. */
@@ -131,12 +143,31 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
 
   const parameters = (overrides?: Keys) => resolveParameters(mergeKeys(keys, overrides), NUCLEOSYNTHESIS_CORRECTIONS);
 
+  /** Helium mass fraction of the nucleosynthesis run for these keys. */
+  function heliumMass(of: Keys): number {
+    const p = resolveParameters({ ...of, errors: "none" }, NUCLEOSYNTHESIS_CORRECTIONS);
+    const ctx = context(p);
+    const factors = scaleFactors(ctx.data, p.scales, library);
+    const { names, values } = evaluate(ctx, { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance });
+    return values[names.indexOf("YpMass")];
+  }
+
+  /** Names in `without` of the model may be of either calculation; an override names those of recombination. */
+  function recombinationRun(overrides: Keys = {}): RecombinationRun {
+    const isOurs = (name: string) => RECOMBINATION_SWITCH_NAMES.includes(name);
+    const base = { ...keys, without: (keys.without ?? []).filter(isOurs) };
+    const early = (keys.without ?? []).filter((name) => !isOurs(name));
+    return runRecombination(mergeKeys(base, overrides), (of) => heliumMass({ ...of, without: early }));
+  }
+
   return {
     library,
     parameters,
     selection,
     context,
     evaluate,
+    recombinationRun,
+    recombination: (overrides) => recombinationResults(recombinationRun(overrides)),
     abundances(overrides, progress) {
       const p = parameters(overrides);
       const ctx = context(p);

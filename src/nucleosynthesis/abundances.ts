@@ -1,5 +1,5 @@
 /** Final abundances by their stated definitions, after all decays of lifetimes below 1e9 s. */
-import { HELIUM4_ATOM_MASS, HYDROGEN_ATOM_MASS } from "../constants/particle.ts";
+import { heliumMassFraction } from "../parameters/helium.ts";
 
 /** Names of the abundances every network reports, in the order of the output. */
 export const ABUNDANCE_NAMES = ["Yp", "YpMass", "dToH", "tToH", "he3ToH", "li6ToH", "li7ToH"] as const;
@@ -73,19 +73,4 @@ export function finalAbundances(
     result.cnoToH = cno / hydrogen;
   }
   return result;
-}
-
-/**
- * Helium mass fraction of neutral hydrogen and helium from the number ratio: Y = f m_He/(m_H + f m_He).
- * @param fHe n_He4/n_H, >= 0
- */
-export function heliumMassFraction(fHe: number): number {
-  const ratio = HELIUM4_ATOM_MASS.value / HYDROGEN_ATOM_MASS.value;
-  return (fHe * ratio) / (1 + fHe * ratio);
-}
-
-/** Inverse of {@link heliumMassFraction}: n_He/n_H = Y/(3.971526 (1 - Y)). @param ypMass in [0, 1) */
-export function heliumToHydrogen(ypMass: number): number {
-  const ratio = HELIUM4_ATOM_MASS.value / HYDROGEN_ATOM_MASS.value;
-  return ypMass / (ratio * (1 - ypMass));
 }

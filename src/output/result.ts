@@ -17,6 +17,22 @@ export interface RateUsed {
   readonly scale?: number;
 }
 
+/** One constant or fit coefficient of recombination. */
+export interface RecombinationConstantUsed {
+  readonly name: string;
+  readonly value: number;
+  /** One standard deviation, where one is stated. */
+  readonly uncertainty?: number;
+  readonly unit: string;
+  readonly source: string;
+  /** Change of z_star and z_drag, and relative change of x_e by redshift, per +1 % (default cosmology). */
+  readonly effectPerPercent: {
+    readonly zStar: number;
+    readonly zDrag: number;
+    readonly xe: Readonly<Record<string, number>>;
+  };
+}
+
 /** Where the numbers come from. */
 export interface Provenance {
   readonly network: string;
@@ -27,6 +43,8 @@ export interface Provenance {
   readonly constants: string;
   /** Seed of the Monte Carlo, when samples were drawn. */
   readonly seed?: number;
+  /** Constants and fits of recombination, in a recombination answer. */
+  readonly recombination?: readonly RecombinationConstantUsed[];
 }
 
 /** Cost of the integration. `wall_ms` is the one value that differs from run to run. */

@@ -1,7 +1,7 @@
 /** Inputs of a recombination history, their defaults, and the ways in which helium is given. */
 import type { LateCosmology } from "../background/expansion.ts";
 import { InputError } from "../numerics/check.ts";
-import { RECOMBINATION_VALUES, type RecombinationValues } from "./atomic.ts";
+import type { RecombinationValues } from "./atomic.ts";
 import { RECOMBINATION_SWITCHES } from "./switches.ts";
 
 export interface RecombinationInputs extends LateCosmology {
@@ -25,20 +25,6 @@ export interface RecombinationInputs extends LateCosmology {
 
 /** Default error control: local error of x_e per step, relative. */
 export const RECOMBINATION_TOLERANCE = 1e-7;
-
-/**
- * n_He/n_H from the helium mass fraction, Y/((m_He/m_H) (1 - Y)), atomic masses.
- * @param ypMass helium mass fraction of neutral H + He, 0 <= Y < 1 (not the nucleon fraction 4 n_He/n_b)
- */
-export function heliumToHydrogen(ypMass: number, values: RecombinationValues = RECOMBINATION_VALUES): number {
-  return ypMass / ((values.heliumMass / values.hydrogenMass) * (1 - ypMass));
-}
-
-/** Helium mass fraction from n_He/n_H; the inverse of {@link heliumToHydrogen}. */
-export function heliumMassFraction(fHe: number, values: RecombinationValues = RECOMBINATION_VALUES): number {
-  const x = (values.heliumMass / values.hydrogenMass) * fHe;
-  return x / (1 + x);
-}
 
 /**
  * Checks the names of `without`.

@@ -11,6 +11,7 @@ export type {
   Milestones,
   Provenance,
   RateUsed,
+  RecombinationConstantUsed,
   SolverReport,
 } from "../output/result.ts";
 

@@ -1,8 +1,8 @@
 /** SciPy integrates the three-level equations from the published formulas alone, in other variables. */
 import { expect, test } from "vitest";
 import { computeLineOfSight } from "../../src/lineofsight/summary.ts";
+import { heliumToHydrogen } from "../../src/parameters/helium.ts";
 import { computeIonisationHistory } from "../../src/recombination/history.ts";
-import { heliumToHydrogen } from "../../src/recombination/inputs.ts";
 import { STANDARD } from "../unit/recombination/cosmologies.ts";
 import { runPython } from "./python.ts";
 

@@ -1,5 +1,6 @@
 /** Cosmologies shared by the recombination tests. */
-import { heliumToHydrogen, type RecombinationInputs } from "../../../src/recombination/inputs.ts";
+import { heliumToHydrogen } from "../../../src/parameters/helium.ts";
+import type { RecombinationInputs } from "../../../src/recombination/inputs.ts";
 
 /** The default cosmology with helium mass fraction 0.2454. */
 export const STANDARD: RecombinationInputs = {

@@ -1,7 +1,7 @@
 /** The ionisation history: step control, continuity, limits, and what each switch does. */
 import { describe, expect, test } from "vitest";
+import { heliumMassFraction, heliumToHydrogen } from "../../../src/parameters/helium.ts";
 import { computeIonisationHistory } from "../../../src/recombination/history.ts";
-import { heliumMassFraction, heliumToHydrogen } from "../../../src/recombination/inputs.ts";
 import { sahaEquilibrium } from "../../../src/recombination/saha.ts";
 import { STANDARD } from "./cosmologies.ts";
 
