@@ -20,6 +20,7 @@ export interface RateUsed {
 /** One constant or fit coefficient of recombination. */
 export interface RecombinationConstantUsed {
   readonly name: string;
+  readonly meaning: string;
   readonly value: number;
   /** One standard deviation, where one is stated. */
   readonly uncertainty?: number;

@@ -81,10 +81,11 @@ function withTable(results: RecombinationResults): RecombinationResults {
 
 /** Every constant and fit of recombination with its source and what it moves. */
 export function recombinationConstants(): RecombinationConstantUsed[] {
-  return Object.entries(RECOMBINATION_CONSTANTS).map(([name, { value, uncertainty, unit, source }]) => {
+  return Object.entries(RECOMBINATION_CONSTANTS).map(([name, { meaning, value, uncertainty, unit, source }]) => {
     const { zStar, zDrag, xe } = CONSTANT_EFFECTS[name];
     return {
       name,
+      meaning: meaning.trim(),
       value,
       ...(uncertainty > 0 ? { uncertainty } : {}),
       unit,

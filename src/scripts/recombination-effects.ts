@@ -50,7 +50,7 @@ function run(changes: Partial<RecombinationInputs>) {
 /** Constants given as logarithms are moved by a share of what they are the logarithm of. */
 function moved(name: RecombinationConstantName, share: number): number {
   const value = RECOMBINATION_VALUES[name];
-  return RECOMBINATION_CONSTANTS[name].source.startsWith("log10") ? value + Math.log10(1 + share) : value * (1 + share);
+  return /log10/.test(RECOMBINATION_CONSTANTS[name].meaning) ? value + Math.log10(1 + share) : value * (1 + share);
 }
 
 type Run = ReturnType<typeof run>;
