@@ -20,27 +20,32 @@ export interface AnswerSpec<Results> {
   readonly text: (answer: Envelope<Results>) => string;
   readonly table: (results: Results) => Table;
   readonly describe?: (results: Results) => Readonly<Record<string, string>>;
+  /** Header of CSV and ECSV, where it is not the provenance alone. */
+  readonly notes?: (answer: Envelope<Results>) => Notes;
   /** The command's figure: all panels, or the one of that name. */
   readonly figure?: (answer: Envelope<Results>, name?: string) => Figure<AnyChart>;
 }
 
-function notes(answer: Envelope): string[] {
-  return Object.entries(provenanceNotes(answer)).flatMap(([key, value]) =>
+type Notes = Readonly<Record<string, string | readonly string[]>>;
+
+function noteLines(notes: Notes): string[] {
+  return Object.entries(notes).flatMap(([key, value]) =>
     typeof value === "string" ? [`${key}: ${value}`] : value.map((item) => `${key}: ${item}`),
   );
 }
 
 /** The answer in the format asked for. */
 export function render<Results>(answer: Envelope<Results>, spec: AnswerSpec<Results>, options: Options): string {
+  const notes = spec.notes ?? provenanceNotes;
   switch (options.format) {
     case "text":
       return spec.text(answer);
     case "json":
       return toJson(answer);
     case "csv":
-      return toCsv(spec.table(answer.results), notes(answer));
+      return toCsv(spec.table(answer.results), noteLines(notes(answer)));
     case "ecsv":
-      return toEcsv(spec.table(answer.results), provenanceNotes(answer), spec.describe?.(answer.results));
+      return toEcsv(spec.table(answer.results), notes(answer), spec.describe?.(answer.results));
   }
 }
 

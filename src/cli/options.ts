@@ -220,7 +220,7 @@ export function outputOptions(charts: readonly string[] = []): Option[] {
     ...(charts.length > 0 ? [chart] : []),
     new Option(
       "--jobs <n>",
-      "worker threads of commands that run many cases; this one runs on a single thread",
+      "threads, where a command runs many cases (default: all cores); any number gives the same result",
     ).argParser(parseJobs),
     new Option("--quiet", "no progress on standard error"),
     new Option("--debug", "show where an error came from"),
@@ -233,7 +233,7 @@ const KEY_OF_OPTION: Readonly<Record<string, keyof Keys>> = {
   evaluation: "evaluations",
   scale: "scales",
 };
-const NOT_KEYS = ["format", "out", "chart", "rates", "jobs", "quiet", "debug"];
+const NOT_KEYS = ["format", "out", "chart", "rates", "jobs", "resume", "join", "quiet", "debug"];
 
 /** The keys of a request from the options that were given. */
 export function toKeys(options: Options): Keys {

@@ -5,6 +5,7 @@ import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { EmberlineError, InputError } from "../numerics/check.ts";
 import { VERSION } from "../version.ts";
 import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
+import { overOptions, resumeOptions } from "./sweep-options.ts";
 
 /** One command: its help, its options, and the module that does it. */
 interface CommandSpec {
@@ -29,6 +30,19 @@ const COMMANDS: readonly CommandSpec[] = [
     options: () => [...nucleosynthesisOptions(), ...outputOptions(["temperature", "weak", "abundances"])],
     example: "emberline history --network twelve --chart history.svg --out history.txt",
     load: () => import("./commands/history.ts"),
+  },
+  {
+    name: "scan",
+    summary: "abundances along one or two parameters: the diagram against the baryon density and its relatives",
+    options: () => [
+      ...overOptions(),
+      ...nucleosynthesisOptions(),
+      ...errorOptions(),
+      ...outputOptions(["helium", "deuterium", "lithium"]),
+      ...resumeOptions(),
+    ],
+    example: "emberline scan --over eta10=1:10:100log --chart diagram.svg --format csv --out scan.csv",
+    load: () => import("./commands/scan.ts"),
   },
   {
     name: "budget",
