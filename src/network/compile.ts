@@ -112,6 +112,9 @@ export function compileNetwork(nuclides: readonly string[], reactions: readonly 
   // Abundances with a trailing 1 and 0, so that every flux is a product of three factors.
   const padded = new Float64Array(n + 2);
   padded[n] = 1;
+  const flows = new Float64Array(count);
+  const reactionOf = new Int32Array(nuclide.length);
+  for (let k = 0; k < count; k++) reactionOf.fill(k, start[k], start[k + 1]);
   return {
     n,
     nuclides,
@@ -126,13 +129,11 @@ export function compileNetwork(nuclides: readonly string[], reactions: readonly 
         padded[i] = Y[i];
         dYds[i] = 0;
       }
-      for (let k = 0; k < count; k++) {
-        const p = 6 * k;
-        const flow =
+      for (let k = 0, p = 0; k < count; k++, p += 6)
+        flows[k] =
           c[2 * k] * padded[particles[p]] * padded[particles[p + 1]] * padded[particles[p + 2]] -
           c[2 * k + 1] * padded[particles[p + 3]] * padded[particles[p + 4]] * padded[particles[p + 5]];
-        for (let e = start[k]; e < start[k + 1]; e++) dYds[who[e]] += by[e] * flow;
-      }
+      for (let e = 0; e < who.length; e++) dYds[who[e]] += by[e] * flows[reactionOf[e]];
     },
     jacobian(c, Y, dfdy) {
       for (let i = 0; i < n; i++) padded[i] = Y[i];
@@ -149,15 +150,17 @@ export function compileNetwork(nuclides: readonly string[], reactions: readonly 
   };
 }
 
-/** Partial derivatives of the fluxes and where each goes: flux, two other particles, multiplicity, then targets. */
+/** Partial derivatives of the fluxes (flux, two other particles, multiplicity), and every entry they add to. */
 interface JacobianPlan {
   readonly flux: Int32Array;
   readonly other1: Int32Array;
   readonly other2: Int32Array;
   readonly multiplicity: Float64Array;
-  readonly start: Int32Array;
+  /** Entry e adds change[e] times partial[source[e]] to target[e]. */
+  readonly source: Int32Array;
   readonly target: Int32Array;
   readonly change: Float64Array;
+  readonly partial: Float64Array;
 }
 
 function planTargets(
@@ -170,7 +173,7 @@ function planTargets(
   const other1: number[] = [];
   const other2: number[] = [];
   const multiplicity: number[] = [];
-  const start = [0];
+  const source: number[] = [];
   const target: number[] = [];
   const change: number[] = [];
   for (let f = 0; f < 2 * count; f++) {
@@ -179,16 +182,16 @@ function planTargets(
     for (const j of new Set(trio.filter((i) => i < n))) {
       const rest = [...trio];
       rest.splice(rest.indexOf(j), 1);
+      const k = f >> 1;
+      for (let e = structure.start[k]; e < structure.start[k + 1]; e++) {
+        source.push(flux.length);
+        target.push(slot(structure.nuclide[e], j));
+        change.push(sign * structure.change[e]);
+      }
       flux.push(f);
       other1.push(rest[0]);
       other2.push(rest[1]);
       multiplicity.push(trio.filter((i) => i === j).length);
-      const k = f >> 1;
-      for (let e = structure.start[k]; e < structure.start[k + 1]; e++) {
-        target.push(slot(structure.nuclide[e], j));
-        change.push(sign * structure.change[e]);
-      }
-      start.push(target.length);
     }
   }
   return {
@@ -196,16 +199,16 @@ function planTargets(
     other1: Int32Array.from(other1),
     other2: Int32Array.from(other2),
     multiplicity: Float64Array.from(multiplicity),
-    start: Int32Array.from(start),
+    source: Int32Array.from(source),
     target: Int32Array.from(target),
     change: Float64Array.from(change),
+    partial: new Float64Array(flux.length),
   };
 }
 
 function accumulate(plan: JacobianPlan, c: Float64Array, padded: Float64Array, out: Float64Array, sign: number): void {
-  const { flux, other1, other2, multiplicity, start, target, change } = plan;
-  for (let k = 0; k < flux.length; k++) {
-    const partial = sign * multiplicity[k] * c[flux[k]] * padded[other1[k]] * padded[other2[k]];
-    for (let e = start[k]; e < start[k + 1]; e++) out[target[e]] += change[e] * partial;
-  }
+  const { flux, other1, other2, multiplicity, source, target, change, partial } = plan;
+  for (let k = 0; k < flux.length; k++)
+    partial[k] = sign * multiplicity[k] * c[flux[k]] * padded[other1[k]] * padded[other2[k]];
+  for (let e = 0; e < target.length; e++) out[target[e]] += change[e] * partial[source[e]];
 }

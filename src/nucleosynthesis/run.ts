@@ -85,8 +85,11 @@ export function prepareRun(
   };
 }
 
-/** Runs after which generated code has paid for itself, measured: compiling it costs some hundred loop runs. */
-const RUNS_BEFORE_GENERATING = 20;
+/**
+ * Runs per flux after which generated code has paid for itself: until the engine has optimised it, straight-line code
+ * of a large network is slower than the loops by far, and optimising takes the time of some hundred runs.
+ */
+const RUNS_PER_FLUX_BEFORE_GENERATING = 2;
 
 const kernelCache = new WeakMap<CompiledNetwork, () => NetworkKernels>();
 
@@ -97,7 +100,7 @@ export function kernelsOf(network: CompiledNetwork): () => NetworkKernels {
   let kernels = loopKernels(network);
   let runs = 0;
   const next = () => {
-    if (runs++ === RUNS_BEFORE_GENERATING) kernels = generateKernels(network) ?? kernels;
+    if (runs++ === RUNS_PER_FLUX_BEFORE_GENERATING * network.fluxes) kernels = generateKernels(network) ?? kernels;
     return kernels;
   };
   kernelCache.set(network, next);
