@@ -8,6 +8,7 @@ import {
   finalAbundances,
   HEAVY_ABUNDANCE_NAMES,
   HEAVY_NETWORKS,
+  ORDER_OF_MAGNITUDE_REASON,
 } from "../nucleosynthesis/abundances.ts";
 import { assembleNetwork, type NetworkData, WEAK_REACTION } from "../nucleosynthesis/network-data.ts";
 import { addCounts, prepareRun, type RunContext, type RunInputs, runNetwork } from "../nucleosynthesis/run.ts";
@@ -24,7 +25,7 @@ import {
 } from "../parameters/cosmology.ts";
 import { RECOMBINATION_SWITCH_NAMES } from "../recombination/switches.ts";
 import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
-import { propagateLinearly } from "../uncertainty/propagation.ts";
+import { type LinearPropagation, propagateLinearly } from "../uncertainty/propagation.ts";
 import type { WeakOptions } from "../weak/inputs.ts";
 import { tabulateWeakRates, WEAK_TABLE_SPACING, type WeakTable } from "../weak/table.ts";
 
@@ -44,6 +45,8 @@ export interface AbundanceRun {
   readonly abundances: Partial<Record<AbundanceName, Estimate>>;
   readonly nEffComputed: number;
   readonly correlation?: { readonly order: readonly string[]; readonly matrix: readonly (readonly number[])[] };
+  /** With linear errors: share of each abundance's variance due to rates whose uncertainty is not a published one. */
+  readonly assumedVarianceShare?: Readonly<Partial<Record<AbundanceName, number>>>;
   readonly quantiles?: Readonly<Record<string, Readonly<Record<string, number>>>>;
   readonly solver: SolverCounts & { readonly tolerance: number };
   readonly warnings: readonly string[];
@@ -176,7 +179,9 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
       const central = evaluate(ctx, inputs);
       let counts = central.counts;
       const report = (
-        errors: Pick<AbundanceRun, "correlation" | "quantiles"> & { sigma?: ArrayLike<number> },
+        errors: Pick<AbundanceRun, "correlation" | "assumedVarianceShare" | "quantiles"> & {
+          sigma?: ArrayLike<number>;
+        },
       ): AbundanceRun => ({
         abundances: Object.fromEntries(
           central.names.map((name, i) => [
@@ -186,6 +191,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
         ),
         nEffComputed: ctx.history.nEffComputed,
         ...(errors.correlation ? { correlation: errors.correlation } : {}),
+        ...(errors.assumedVarianceShare ? { assumedVarianceShare: errors.assumedVarianceShare } : {}),
         ...(errors.quantiles ? { quantiles: errors.quantiles } : {}),
         solver: { ...counts, tolerance: p.tolerance },
         warnings: validityWarnings(p),
@@ -208,6 +214,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
         return report({
           sigma: linear.sigma,
           correlation: { order: central.names, matrix: linear.correlation },
+          assumedVarianceShare: assumedShares(ctx, central.names, linear),
         });
       }
       if (p.samples < 2) throw new InputError("range", `samples = ${p.samples}: errors by sampling need at least 2`);
@@ -288,6 +295,22 @@ export function applyVariations(
   };
 }
 
+/** Share of each variance that is due to rates whose uncertainty is assumed or from memory; 0 where there is none. */
+function assumedShares(
+  ctx: RunContext,
+  names: readonly AbundanceName[],
+  { response, covariance }: LinearPropagation,
+): Partial<Record<AbundanceName, number>> {
+  const isAssumed = ctx.data.reactions.map(({ selected }) => selected.rateTable.uncertaintyBasis !== "published");
+  return Object.fromEntries(
+    names.map((name, x) => {
+      const whole = covariance[x * names.length + x];
+      const assumed = isAssumed.reduce((sum, counts, r) => sum + (counts ? response[r + 1][x] ** 2 : 0), 0);
+      return [name, whole > 0 ? assumed / whole : 0];
+    }),
+  );
+}
+
 /** Constant factors per reaction of the compiled network, n_p first. */
 export function scaleFactors(
   data: NetworkData,
@@ -324,6 +347,7 @@ export function validityWarnings(p: CosmologyParameters): string[] {
     warnings.push(`tolerance = ${p.tolerance}: integration error may exceed 1e-3 of an abundance`);
   if (p.network === "twelve" && p.eta10 > 20)
     warnings.push(`network twelve at eta10 = ${p.eta10.toPrecision(4)}: flows beyond A = 7 are left out; use extended`);
+  if (HEAVY_NETWORKS.includes(p.network)) warnings.push(`network ${p.network}: ${ORDER_OF_MAGNITUDE_REASON}`);
   if (p.eta10 < 0.3)
     warnings.push(
       `eta10 = ${p.eta10.toPrecision(4)}: nucleosynthesis is incomplete and sensitive to rates of weak support`,

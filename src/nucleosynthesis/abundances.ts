@@ -11,6 +11,15 @@ export type AbundanceName = (typeof ABUNDANCE_NAMES)[number] | (typeof HEAVY_ABU
 /** Networks for which the heavy abundances are reported. */
 export const HEAVY_NETWORKS: readonly string[] = ["extended", "wide"];
 
+/**
+ * Abundances that are orders of magnitude only. The reactions that make and destroy these nuclides at the energies of the
+ * early Universe are measured in part or not at all, and hardly any of their rates has a published uncertainty.
+ */
+export const ORDER_OF_MAGNITUDE: readonly AbundanceName[] = HEAVY_ABUNDANCE_NAMES;
+/** The warning that says so. */
+export const ORDER_OF_MAGNITUDE_REASON =
+  "9Be, 10B, 11B and CNO are orders of magnitude only: many of their rates are old compilations or estimates, nearly all uncertainties are assumed";
+
 /** What is needed to sum nuclides: id and charge. */
 export interface Species {
   readonly id: string;
@@ -29,7 +38,7 @@ export const DEFINITIONS: Readonly<Record<AbundanceName, string>> = {
   be9ToH: "9Be/H by number",
   b10ToH: "10B/H by number, 10C included",
   b11ToH: "11B/H by number, 11C included",
-  cnoToH: "nuclides of Z = 6, 7, 8 (but 10C, 11C) to H by number",
+  cnoToH: "Z = 6, 7, 8 but 10C, 11C, to H by number",
 };
 
 /**

@@ -1,12 +1,16 @@
 /** The answer of `abundances` as text and as a table of one row. */
 
-import { type AbundanceName, DEFINITIONS } from "../nucleosynthesis/abundances.ts";
+import { type AbundanceName, DEFINITIONS, ORDER_OF_MAGNITUDE } from "../nucleosynthesis/abundances.ts";
 import { abundanceLabel } from "../nucleosynthesis/labels.ts";
 import type { Table } from "../numerics/table.ts";
-import { provenanceLines, titleLine } from "./provenance-text.ts";
+import { ASSUMED_MARK, provenanceLines, titleLine } from "./provenance-text.ts";
 import type { AbundanceResults, Envelope, Estimate } from "./result.ts";
-import { alignColumns, formatEstimate, formatNumber } from "./text.ts";
+import { alignColumns, formatEstimate, formatNumber, wrap } from "./text.ts";
 
+/** Mark of a value that is an order of magnitude only. */
+const ROUGH_MARK = "~";
+/** Share of the variance from assumed uncertainties above which an error is marked. */
+const MARKED_SHARE = 0.5;
 /** The abundances that are observed: their correlations are printed. */
 const OBSERVED: readonly string[] = ["Yp", "dToH", "he3ToH", "li7ToH"];
 
@@ -17,13 +21,28 @@ function estimates(results: AbundanceResults): [AbundanceName, Estimate][] {
 /** One line an abundance; those of nuclides that the network does not hold are 0 and stay out. */
 function estimateLines(results: AbundanceResults): string[] {
   const present = estimates(results).filter(([, estimate]) => estimate.value !== 0);
+  const share = (name: AbundanceName) => results.assumedVarianceShare?.[name] ?? 0;
+  const assumed = present.some(([name]) => share(name) > MARKED_SHARE);
+  const rough = present.some(([name]) => ORDER_OF_MAGNITUDE.includes(name));
   const rows = present.map(([name, estimate]) => [
     `  ${abundanceLabel(name)}`,
-    formatEstimate(estimate.value, estimate.sigma),
+    `${ORDER_OF_MAGNITUDE.includes(name) ? ROUGH_MARK : rough ? " " : ""}${formatEstimate(estimate.value, estimate.sigma)}` +
+      (share(name) > MARKED_SHARE ? ASSUMED_MARK : ""),
     DEFINITIONS[name],
   ]);
-  rows.push(["  N_eff", formatNumber(results.nEffComputed), "effective neutrino number that results"]);
-  return alignColumns(rows);
+  const plain = formatNumber(results.nEffComputed);
+  rows.push(["  N_eff", rough ? ` ${plain}` : plain, "effective neutrino number that results"]);
+  return [
+    ...alignColumns(rows),
+    ...(assumed
+      ? wrap(
+          `${ASSUMED_MARK} most of this error is due to rates whose uncertainty is assumed, not published`,
+          "  ",
+          "    ",
+        )
+      : []),
+    ...(rough ? wrap(`${ROUGH_MARK} order of magnitude only`, "  ") : []),
+  ];
 }
 
 function correlationLines(correlation: AbundanceResults["correlation"]): string[] {
@@ -87,8 +106,11 @@ export function abundancesTable(results: AbundanceResults): Table {
 export function abundancesDescriptions(results: AbundanceResults): Record<string, string> {
   const meanings: Record<string, string> = { nEffComputed: "effective neutrino number that results" };
   for (const [name] of estimates(results)) {
-    meanings[name] = DEFINITIONS[name];
-    meanings[`${name}_sigma`] = `theory error of ${name}, one standard deviation`;
+    meanings[name] = `${DEFINITIONS[name]}${ORDER_OF_MAGNITUDE.includes(name) ? "; order of magnitude only" : ""}`;
+    const share = results.assumedVarianceShare?.[name] ?? 0;
+    meanings[`${name}_sigma`] =
+      `theory error of ${name}, one standard deviation` +
+      (share > MARKED_SHARE ? `, ${(100 * share).toFixed(0)} per cent of its variance from assumed uncertainties` : "");
   }
   return meanings;
 }

@@ -4,7 +4,7 @@ import { formatReaction } from "../nuclear/reaction-name.ts";
 import { abundanceLabel } from "../nucleosynthesis/labels.ts";
 import type { Table } from "../numerics/table.ts";
 import type { BudgetResults } from "./budget-result.ts";
-import { provenanceLines, titleLine } from "./provenance-text.ts";
+import { ASSUMED_MARK, provenanceLines, titleLine } from "./provenance-text.ts";
 import type { Envelope } from "./result.ts";
 import { alignColumns, formatEstimate, pad, wrap } from "./text.ts";
 
@@ -14,9 +14,6 @@ const SHOWN = ["Yp", "dToH", "he3ToH", "li7ToH"] as const;
 const LEAST_SHARE = 0.005;
 /** Parameters whose sensitivities are all below this are counted only. */
 const LEAST_SENSITIVITY = 0.005;
-/** Mark of an uncertainty that no publication backs. */
-const ASSUMED_MARK = "*";
-
 const PARAMETER_LABELS: Readonly<Record<string, string>> = { omegaB: "omega_b", tauN: "tau_n", nEff: "N_eff", G: "G" };
 
 /** Printed name of a parameter or reaction. */

@@ -7,6 +7,23 @@ import { alignColumns, displayWidth, formatEstimate, formatNumber, pad, TEXT_WID
 
 /** Evaluation name of the fits that are taken as they stand; they are listed together. */
 const COLLECTION = "reaclib";
+/** Mark of an uncertainty that no publication backs: assumed, or from memory. */
+export const ASSUMED_MARK = "*";
+
+/** The mark of a rate, empty where its uncertainty is published. */
+function markOf(rate: RateUsed): string {
+  return rate.uncertaintyBasis === "published" ? "" : ASSUMED_MARK;
+}
+
+/** What the mark means, in full if some are from memory; nothing where all uncertainties are published. */
+function markLegend(rates: readonly RateUsed[]): string {
+  const count = (basis: RateUsed["uncertaintyBasis"]) => rates.filter((rate) => rate.uncertaintyBasis === basis).length;
+  const parts = [
+    ...(count("assumed") > 0 ? [`assumed (${count("assumed")} of ${rates.length})`] : []),
+    ...(count("from memory") > 0 ? [`from memory (${count("from memory")})`] : []),
+  ];
+  return parts.length > 0 ? ` (${ASSUMED_MARK} uncertainty ${parts.join(" or ")}, not published)` : "";
+}
 
 /** The same text, never broken between its words. */
 function held(text: string): string {
@@ -48,13 +65,15 @@ export function cosmologyLines(c: CosmologyParameters): string[] {
 function rateLines(rates: readonly RateUsed[]): string[] {
   const own = rates.filter((rate) => rate.evaluation !== COLLECTION);
   const rest = rates.filter((rate) => rate.evaluation === COLLECTION);
-  const heads = alignColumns(own.map((rate) => [`  ${formatReaction(rate.reaction)}`, rate.evaluation, ""]));
+  const heads = alignColumns(
+    own.map((rate) => [`  ${formatReaction(rate.reaction)}${markOf(rate)}`, rate.evaluation, ""]),
+  );
   const room = Math.max(0, ...heads.map(displayWidth)) + 2;
   const lines = own.flatMap((rate, i) => wrap(rate.citation, pad(heads[i], room), " ".repeat(room)));
   if (rest.length > 0) {
     const sources = [...new Set(rest.map((rate) => rate.citation.split(";")[0]))];
     const label = `${own.length > 0 ? "and " : ""}${rest.length} from ${COLLECTION}, ${sources.join("; ")}:`;
-    const names = rest.map((rate) => held(formatReaction(rate.reaction))).join(", ");
+    const names = rest.map((rate) => held(`${formatReaction(rate.reaction)}${markOf(rate)}`)).join(", ");
     lines.push(...wrap(`${label} ${names}`, "  ", "    "));
   }
   return lines;
@@ -80,7 +99,7 @@ export function provenanceLines(answer: Envelope): string[] {
     ...entry("solver", cost.map(held).join(", ")),
     ...entry("network", `${provenance.network}: ${provenance.rates.length} rates and n ↔ p`),
     "",
-    "Rates",
+    `Rates${markLegend(provenance.rates)}`,
     ...rateLines(provenance.rates),
   ];
   if (answer.warnings.length > 0) lines.push("", "Warnings", ...answer.warnings.flatMap((w) => wrap(w, "  ", "    ")));
@@ -115,7 +134,8 @@ export function provenanceNotes(answer: Envelope): Record<string, string | reado
     network: provenance.network,
     rates: provenance.rates.map(
       (rate) =>
-        `${rate.reaction}: ${rate.evaluation}${rate.scale === undefined ? "" : ` x ${rate.scale}`}; ${rate.citation}`,
+        `${rate.reaction}: ${rate.evaluation}${rate.scale === undefined ? "" : ` x ${rate.scale}`}; ` +
+        `${rate.citation}; uncertainty ${rate.uncertaintyBasis}`,
     ),
     ...(answer.warnings.length > 0 ? { warnings: answer.warnings } : {}),
   };

@@ -1,5 +1,6 @@
 /** The shape of every answer: the JSON object, and what `abundances` and `history` put into it. */
 import type { AbundanceRun, Estimate } from "../model/prepare.ts";
+import type { RateTable } from "../nuclear/parse-rate-file.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { Table } from "../numerics/table.ts";
 import type { CosmologyParameters } from "../parameters/cosmology.ts";
@@ -13,6 +14,8 @@ export interface RateUsed {
   /** Evaluation used: firstauthorYEAR, or `reaclib`. */
   readonly evaluation: string;
   readonly citation: string;
+  /** Where the size of its uncertainty comes from; anything but `published` is marked in every output. */
+  readonly uncertaintyBasis: RateTable["uncertaintyBasis"];
   /** Factor by which the user scaled the rate; left out when 1. */
   readonly scale?: number;
 }

@@ -24,7 +24,7 @@ export async function computeAbundances(
 export function abundancesOf(model: Model, overrides: Keys = {}, progress?: Progress): Envelope<AbundanceResults> {
   const parameters = model.parameters(overrides);
   const run = model.abundances(overrides, (done, total) => progress?.(done / total, "error runs"));
-  const { abundances, nEffComputed, correlation, quantiles } = run;
+  const { abundances, nEffComputed, correlation, assumedVarianceShare, quantiles } = run;
   return makeEnvelope(
     "abundances",
     parameters,
@@ -32,6 +32,7 @@ export function abundancesOf(model: Model, overrides: Keys = {}, progress?: Prog
       abundances: abundances as AbundanceResults["abundances"],
       nEffComputed,
       ...(correlation ? { correlation } : {}),
+      ...(assumedVarianceShare ? { assumedVarianceShare } : {}),
       ...(quantiles ? { quantiles } : {}),
     },
     nucleosynthesisProvenance(model, parameters),

@@ -25,7 +25,8 @@ export function nucleosynthesisProvenance(model: Model, parameters: CosmologyPar
     return {
       reaction: reaction.id,
       evaluation: evaluationName,
-      citation: rateTable.meta.citation,
+      citation: rateTable.citation,
+      uncertaintyBasis: rateTable.uncertaintyBasis,
       ...(scale !== undefined && scale !== 1 ? { scale } : {}),
     };
   });

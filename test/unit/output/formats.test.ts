@@ -113,10 +113,22 @@ test("abundances as a table: one row, each error beside its value, every column 
   for (const column of one.columns) expect(meanings[column], column).toMatch(/\w/);
 });
 
+test("an uncertainty that is not published is marked in notes and column descriptions", () => {
+  const answer = sampleAbundances();
+  expect(provenanceNotes(answer).rates).toContain(
+    "t_he3: reaclib; Collection 2010, J. 1, 2; label; uncertainty assumed",
+  );
+  const meanings = abundancesDescriptions(answer.results);
+  expect(meanings.li7ToH_sigma).toContain("70 per cent of its variance from assumed uncertainties");
+  expect(meanings.dToH_sigma).not.toContain("assumed");
+});
+
 test("provenance notes name network, corrections and every rate with its scale", () => {
   const notes = provenanceNotes(sampleAbundances());
   expect(notes.network).toBe("twelve");
-  expect(notes.rates).toContain("d-p_gamma-he3: someone2016 x 1.02; Someone et al. 2016, J. 3, 4");
+  expect(notes.rates).toContain(
+    "d-p_gamma-he3: someone2016 x 1.02; Someone et al. 2016, J. 3, 4; uncertainty published",
+  );
   expect(notes.cosmology).toContain("omegaB=0.0224");
   expect(notes.warnings).toEqual(["a warning that says why"]);
 });

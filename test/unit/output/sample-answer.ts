@@ -1,14 +1,30 @@
 /** Answers made of round numbers, to test how they are shown: not results of a calculation. */
-import type { AbundanceResults, Envelope, HistoryResults } from "../../../src/output/result.ts";
+import type { AbundanceResults, Envelope, HistoryResults, Provenance } from "../../../src/output/result.ts";
 import { resolveParameters } from "../../../src/parameters/cosmology.ts";
 import { makeEnvelope } from "../../../src/requests/envelope.ts";
 
-const provenance = {
+const provenance: Provenance = {
   network: "twelve",
   rates: [
-    { reaction: "t_he3", evaluation: "reaclib", citation: "Collection 2010, J. 1, 2; label" },
-    { reaction: "d-p_gamma-he3", evaluation: "someone2016", citation: "Someone et al. 2016, J. 3, 4", scale: 1.02 },
-    { reaction: "li7-p_he4-he4", evaluation: "other2004", citation: `Other ${"and Others ".repeat(8)}2004, J. 5, 6` },
+    {
+      reaction: "t_he3",
+      evaluation: "reaclib",
+      citation: "Collection 2010, J. 1, 2; label",
+      uncertaintyBasis: "assumed",
+    },
+    {
+      reaction: "d-p_gamma-he3",
+      evaluation: "someone2016",
+      citation: "Someone et al. 2016, J. 3, 4",
+      uncertaintyBasis: "published",
+      scale: 1.02,
+    },
+    {
+      reaction: "li7-p_he4-he4",
+      evaluation: "other2004",
+      citation: `Other ${"and Others ".repeat(8)}2004, J. 5, 6`,
+      uncertaintyBasis: "from memory",
+    },
   ],
   corrections: ["coulomb", "radiative"],
   constants: "CODATA 2022",
@@ -37,6 +53,7 @@ export function sampleAbundances(): Envelope<AbundanceResults> {
           [0.3, -0.6, 0.4, 1],
         ],
       },
+      assumedVarianceShare: { Yp: 0, dToH: 0.01, he3ToH: 0.1, li7ToH: 0.7 },
     },
     provenance,
     solver,

@@ -83,6 +83,19 @@ test("abundances read in 80 columns", () => {
   expect(text.replace(VERSION, "x.y.z")).toMatchSnapshot();
 });
 
+test("what is an order of magnitude only, or has an assumed error, is marked and the marks are explained", () => {
+  const answer = sampleAbundances();
+  const abundances = { ...answer.results.abundances, be9ToH: { value: 5e-18, sigma: 2e-18 } };
+  const text = abundancesText({ ...answer, results: { ...answer.results, abundances } });
+  expect(text).toContain("~5.0e-18 ± 2.0e-18");
+  expect(text).toContain("~ order of magnitude only");
+  expect(text).toContain("5.00e-10 ± 0.40e-10* ");
+  expect(text).toMatch(/\* most of this error is due to rates whose uncertainty is assumed/);
+  expect(text).toContain("⁷Li(p,α)⁴He*");
+  expect(text).toContain("t(β⁻)³He*");
+  expect(text).toContain("D/H     2.500e-5 ± 0.030e-5   D/H by number");
+});
+
 test("history reads in 80 columns", () => {
   const text = historyText(sampleHistory());
   for (const line of text.split("\n")) expect(displayWidth(line), line).toBeLessThanOrEqual(TEXT_WIDTH);
