@@ -77,7 +77,8 @@ export function curveLabels(curves: readonly Curve[], frame: LabelFrame): Record
   return labels;
 }
 
-function textAt(x: number, y: number, text: string, color: string, axis: string): AnnotationOptions<"label"> {
+/** Text at a point of the axes. */
+export function textAt(x: number, y: number, text: string, color: string, axis: string): AnnotationOptions<"label"> {
   return {
     type: "label",
     xValue: x,

@@ -50,7 +50,8 @@ export function strictNumber(text: string, option: string, expected: string): nu
   return value;
 }
 
-function numberInRange(text: string, option: string, key: string): number {
+/** A number within the range of its key. @throws {InputError} */
+export function numberInRange(text: string, option: string, key: string): number {
   const value = strictNumber(text, option, `a number from ${accepted(key)}`);
   const { min, max, meaning } = RANGES[key];
   if (!(value >= min && value <= max))
@@ -76,7 +77,8 @@ function wholeInRange(text: string, option: string, key: string): number {
   return value;
 }
 
-function oneOf(text: string, option: string, choices: readonly string[]): string {
+/** @throws {InputError} unless the word is one of the choices */
+export function oneOf(text: string, option: string, choices: readonly string[]): string {
   if (!choices.includes(text))
     throw new InputError("choice", `${option} ${text}: unknown; accepted are ${choices.join(", ")}`);
   return text;
@@ -139,7 +141,8 @@ function unitSuffix(unit: string): string {
   return unit === "" ? "" : ` [${unit}]`;
 }
 
-function numeric(
+/** Option of one numeric key, with unit, range and default in its help. */
+export function numeric(
   flag: string,
   key: string,
   parse: (text: string, option: string, key: string) => unknown,
@@ -232,6 +235,7 @@ const KEY_OF_OPTION: Readonly<Record<string, keyof Keys>> = {
   deltaN: "deltaNEff",
   evaluation: "evaluations",
   scale: "scales",
+  yp: "ypMass",
 };
 const NOT_KEYS = ["format", "out", "chart", "rates", "jobs", "resume", "join", "quiet", "debug"];
 

@@ -5,6 +5,7 @@ import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { EmberlineError, InputError } from "../numerics/check.ts";
 import { VERSION } from "../version.ts";
 import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
+import { recombinationOptions } from "./recombination-options.ts";
 import { overOptions, resumeOptions } from "./sweep-options.ts";
 
 /** One command: its help, its options, and the module that does it. */
@@ -50,6 +51,13 @@ const COMMANDS: readonly CommandSpec[] = [
     options: () => [...nucleosynthesisOptions(), ...outputOptions(["helium", "deuterium", "helium3", "lithium"])],
     example: "emberline budget --chart budget.png",
     load: () => import("./commands/budget.ts"),
+  },
+  {
+    name: "recombination",
+    summary: "ionisation history, last scattering, baryon drag, sound horizons of one cosmology",
+    options: () => [...recombinationOptions(), ...outputOptions(["ionisation", "visibility", "temperature", "depth"])],
+    example: "emberline recombination --tau-reion 0.054 --chart recombination.svg --format csv --out history.csv",
+    load: () => import("./commands/recombination.ts"),
   },
 ];
 const DEFAULT_COMMAND = "abundances";
@@ -97,7 +105,8 @@ const REMEDIES: Readonly<Record<string, string>> = {
 function nameOptions(message: string): string {
   return message
     .replace(/^(network|errors|samples|seed|tolerance|rates|scale) (?:= )?/, "--$1 ")
-    .replace(/^expansion /, "--expansion ");
+    .replace(/^expansion /, "--expansion ")
+    .replace(/^(h0|z|tauReion|without) = /, (_, key: string) => `--${key === "tauReion" ? "tau-reion" : key} `);
 }
 
 /** One line for an error, and the exit status. */

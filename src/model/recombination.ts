@@ -48,7 +48,7 @@ export function recombinationParameters(keys: Keys): CosmologyParameters {
   if (keys.expansion !== undefined && trivialExpression(keys.expansion) !== 1)
     throw new InputError(
       "expansion",
-      `expansion = ${keys.expansion}: refused by recombination; it is a factor on H(T) in nucleosynthesis only`,
+      `expansion ${keys.expansion}: refused by recombination; it is a factor on H(T) in nucleosynthesis only`,
     );
   const tolerance = keys.tolerance ?? RECOMBINATION_TOLERANCE;
   const parameters = resolveParameters({ ...keys, tolerance }, RECOMBINATION_SWITCH_NAMES);

@@ -192,3 +192,28 @@ export function recombinationText(answer: Envelope<RecombinationResults>): strin
   ];
   return `${lines.join("\n")}\n`;
 }
+
+/** What each column of the table is. */
+export function recombinationDescriptions(): Record<string, string> {
+  return {
+    z: "redshift; a cubic through neighbouring rows reproduces every column within 1e-5",
+    xe: "free electrons per hydrogen nucleus, n_e/n_H, with reionisation if there is one",
+    Tm_K: "matter temperature (reionisation does not heat it)",
+    Tr_K: "radiation temperature",
+    opticalDepth: "Thomson optical depth from today",
+    visibility_per_z: "g(z) = exp(-tau) d tau/dz",
+    conformalTime_Mpc: "comoving particle horizon c int dt/a",
+  };
+}
+
+/** One line of parameters and program, for the foot of a figure. */
+export function recombinationNote({ cosmology: c, version }: Envelope<RecombinationResults>): string {
+  const parts = [
+    `ω_b = ${formatNumber(c.omegaB)}`,
+    `ω_c = ${c.omegaC}`,
+    `H₀ = ${c.h0}`,
+    `N_eff = ${formatNumber(c.nEff, 4)}`,
+    `Yₚ (mass) = ${formatNumber(c.ypMass ?? 0, 5)}`,
+  ];
+  return `${parts.join(", ")}; model ${c.model}; emberline ${version}`;
+}
