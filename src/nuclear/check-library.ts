@@ -121,7 +121,8 @@ function lineFinder(text: string) {
 }
 
 function sameNumbers(a: RateTable, b: RateTable): boolean {
-  const numbers = (table: RateTable) => [...table.T9, ...table.rate, ...table.terms.flat()].join(" ");
+  const numbers = (table: RateTable) =>
+    [...table.T9, ...table.rate, ...table.terms.flat(), ...table.factorUncertainty].join(" ");
   return a.kind === b.kind && numbers(a) === numbers(b);
 }
 

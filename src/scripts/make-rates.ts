@@ -8,6 +8,7 @@ import { makeReaction, parseEquation, parseReactionId, qValueMeV, type Reaction 
 import { formatRateFile, type RateFileContent } from "../nuclear/write-rate-file.ts";
 import { compilationProvenance, LABELS } from "./rate-labels.ts";
 import { ASSUMED, EVALUATED } from "./rate-sources.ts";
+import { FURTHER_UNCERTAINTIES } from "./rate-uncertainties.ts";
 
 const ENTERED = "2026-12-01; digits copied by src/scripts/make-rates.ts";
 const COEFFICIENTS = ["a0", "a1", "a2", "a3", "a4", "a5", "a6"];
@@ -123,27 +124,57 @@ function compilationFile({ reaction, labels, origins, notes, rows }: Sets, nucli
   });
 }
 
+const TABLE_COLUMNS = ["T9", "rate_cm3_per_mol_s", "factor_uncertainty"];
+
+/** An evaluated table of the source folder as a rate file, and the folder it belongs in. */
+function evaluatedContent(name: string, nuclides: NuclideTable): { id: string; content: RateFileContent } {
+  const provenance = EVALUATED[name];
+  if (!provenance) throw new Error(`evaluated/${name}.csv has no provenance in rate-sources.ts`);
+  const path = `evaluated/${name}.csv`;
+  const text = readFileSync(join(from, path), "utf8");
+  const validity = /validity: ([\d.]+) <= T9 <= ([\d.]+)/.exec(text)!;
+  const reaction = parseEquation(/reaction: ([^,\n]*)/.exec(text)![1]);
+  const { evaluation: _, ...rest } = provenance;
+  const content: RateFileContent = {
+    ...rest,
+    reaction: reaction.equation,
+    kind: "table",
+    qValueKeV: 1000 * qValueMeV(reaction, nuclides),
+    validT9: [validity[1], validity[2]],
+    entered: ENTERED,
+    rows: source(path, TABLE_COLUMNS).map(({ cells }) => TABLE_COLUMNS.map((column) => cells[column])),
+  };
+  return { id: reaction.id, content };
+}
+
 function writeEvaluated(nuclides: NuclideTable): void {
   for (const name of readdirSync(join(from, "evaluated")).map((file) => file.replace(/\.csv$/, ""))) {
-    const provenance = EVALUATED[name];
-    if (!provenance) throw new Error(`evaluated/${name}.csv has no provenance in rate-sources.ts`);
-    const path = `evaluated/${name}.csv`;
-    const text = readFileSync(join(from, path), "utf8");
-    const equation = /reaction: ([^,\n]*)/.exec(text)![1];
-    const validity = /validity: ([\d.]+) <= T9 <= ([\d.]+)/.exec(text)!;
-    const reaction = parseEquation(equation);
-    const columns = ["T9", "rate_cm3_per_mol_s", "factor_uncertainty"];
-    const { evaluation, ...rest } = provenance;
-    const content: RateFileContent = {
-      ...rest,
-      reaction: reaction.equation,
-      kind: "table",
-      qValueKeV: 1000 * qValueMeV(reaction, nuclides),
-      validT9: [validity[1], validity[2]],
-      entered: ENTERED,
-      rows: source(path, columns).map(({ cells }) => columns.map((column) => cells[column])),
-    };
-    write(`${reaction.id}/${evaluation}.ecsv`, formatRateFile(content));
+    const { id, content } = evaluatedContent(name, nuclides);
+    write(`${id}/${EVALUATED[name].evaluation}.ecsv`, formatRateFile(content));
+  }
+}
+
+/** The same rates again with uncertainties found elsewhere, as evaluations of their own. */
+function writeFurtherUncertainties(compilation: ReadonlyMap<string, Sets>, nuclides: NuclideTable): void {
+  for (const { from: rate, evaluation, factorUncertainty, ...stated } of FURTHER_UNCERTAINTIES) {
+    const { uncertaintyBasis, note, citation } = stated;
+    const set = compilation.get(rate.replace(/^reaclib /, ""));
+    if (set) {
+      const { basis, doi, origin } = compilationProvenance(
+        set.labels,
+        `coefficients from ${set.origins.join(" and ")}`,
+      );
+      const content: RateFileContent = {
+        ...{ reaction: set.reaction.equation, kind: "reaclib", citation: citation!, doi, origin, basis },
+        ...{ uncertaintyBasis, factorUncertainty, qValueKeV: 1000 * qValueMeV(set.reaction, nuclides) },
+        ...{ validT9: ["0.01", "10"], note, entered: ENTERED, rows: set.rows },
+      };
+      write(`${set.reaction.id}/${evaluation}.ecsv`, formatRateFile(content));
+      continue;
+    }
+    const { id, content } = evaluatedContent(rate, nuclides);
+    const rows = content.rows.map(([T9, value]) => [T9, value, factorUncertainty]);
+    write(`${id}/${evaluation}.ecsv`, formatRateFile({ ...content, uncertaintyBasis, note, rows }));
   }
 }
 
@@ -228,6 +259,7 @@ for (const id of used) {
   else if (id !== "o13_n13") throw new Error(`${id} is in a network, but has no set`);
 }
 writeEvaluated(nuclides);
+writeFurtherUncertainties(compilation, nuclides);
 writeOldDeuteronCapture(nuclides);
 writeOxygen13(nuclides);
 console.log(`${options.to}: ${used.size} reactions`);

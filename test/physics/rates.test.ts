@@ -73,6 +73,12 @@ describe("factor uncertainties are those the papers state", () => {
   test("d(p,g)he3: 3 per cent (Mossa et al. 2020, Nature 587, 210)", () => {
     expect(uncertainty("d-p_gamma-he3", "mossa2020", 0.8)).toBeCloseTo(0.03, 10);
   });
+  test("d(p,g)he3: 2.2 per cent at T9 = 0.8 from all data together (Moscoso et al. 2021, ApJ 923, 49)", () => {
+    expect(uncertainty("d-p_gamma-he3", "mossa2020-moscoso2021", 0.8)).toBeCloseTo(0.022, 10);
+  });
+  test("he3(a,g)be7: 7.4 per cent (Cyburt, Fields & Olive 2008, JCAP 11, 012)", () => {
+    expect(uncertainty("he3-he4_gamma-be7", "cyburt2008", 0.8)).toBeCloseTo(0.074, 10);
+  });
   test("t(d,n)he4: 0.2 to 0.6 per cent from 1 MK to 1 GK (de Souza et al. 2019, PRC 99, 014619)", () => {
     const table = library.table("t-d_n-he4", "desouza2019");
     for (const T9 of table.T9.filter((each) => each <= 1)) {

@@ -55,10 +55,32 @@ test("evaluations asked for replace the network's, in any notation", () => {
 
 test("all alternatives are there", () => {
   const has = (id: string) => library.evaluations(id);
-  expect(has("d-p_gamma-he3")).toEqual(["descouvemont2004", "iliadis2016", "marcucci2016", "mossa2020", "reaclib"]);
+  expect(has("d-p_gamma-he3")).toEqual([
+    "descouvemont2004",
+    "iliadis2016",
+    "marcucci2016",
+    "mossa2020",
+    "mossa2020-moscoso2021",
+    "reaclib",
+  ]);
   expect(has("be7-n_p-li7")).toEqual(["damone2018", "descouvemont2004", "desouza2020", "reaclib"]);
   expect(has("he3-d_p-he4")).toEqual(["descouvemont2004", "desouza2019", "desouza2019-case2", "reaclib"]);
   expect(has("t-d_n-he4")).toEqual(["descouvemont2004", "desouza2019", "reaclib"]);
+});
+
+test.each([
+  ["t-he4_gamma-li7", "descouvemont2004-s0", "descouvemont2004"],
+  ["li7-p_he4-he4", "descouvemont2004-s0", "descouvemont2004"],
+  ["li6-p_he3-he4", "pizzone2005-s0", "pizzone2005"],
+  ["be7-p_gamma-b8", "angulo1999-s0", "angulo1999"],
+])("%s: %s is %s with another uncertainty, from memory and in no network", (id, name, original) => {
+  const [further, standing] = [library.table(id, name), library.table(id, original)];
+  expect(further.uncertaintyBasis).toBe("from memory");
+  expect(further.note).toMatch(/from memory/);
+  expect([...further.rate]).toEqual([...standing.rate]);
+  expect([...further.factorUncertainty]).not.toEqual([...standing.factorUncertainty]);
+  for (const network of library.networkNames)
+    expect(library.network(network).find(({ reaction }) => reaction === id)?.evaluation ?? original).toBe(original);
 });
 
 describe("refused", () => {
