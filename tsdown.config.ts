@@ -2,7 +2,12 @@
 import { defineConfig } from "tsdown";
 
 export default defineConfig({
-  entry: { "cli/main": "src/cli/main.ts", "node/index": "src/node/index.ts", index: "src/index.ts" },
+  entry: {
+    "cli/main": "src/cli/main.ts",
+    "node/index": "src/node/index.ts",
+    "node/worker": "src/node/worker.ts",
+    index: "src/index.ts",
+  },
   format: "esm",
   platform: "node",
   target: "node20",

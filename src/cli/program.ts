@@ -1,5 +1,6 @@
 /** The command line: its commands, each loaded only when run, and every error as one line. */
 import { Command, CommanderError, type Option } from "commander";
+import { Interrupted } from "../node/interrupt.ts";
 import { printNotice, printResult } from "../node/print.ts";
 import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { EmberlineError, InputError } from "../numerics/check.ts";
@@ -113,6 +114,7 @@ function nameOptions(message: string): string {
 export function describeError(error: unknown): { readonly line: string; readonly status: number } {
   const say = (text: string) => `emberline: ${text.trim().replace(/\s*\n\s*/g, " ")}`;
   if (error instanceof EmberlineError) return { line: say(nameOptions(error.message)), status: error.exitCode };
+  if (error instanceof Interrupted) return { line: say(error.message), status: error.exitCode };
   if (error instanceof CommanderError) {
     const message = error.message.replace(/^error: /, "").replace(/\.$/, "");
     return { line: say(`${message}; ${REMEDIES[error.code] ?? "see emberline help"}`), status: 2 };
@@ -124,7 +126,7 @@ export function describeError(error: unknown): { readonly line: string; readonly
 /**
  * Runs one command line.
  * @param args words after the program's name
- * @returns exit status: 0 done, 1 the calculation failed, 2 bad input
+ * @returns exit status: 0 done, 1 the calculation failed, 2 bad input, 130 interrupted
  */
 export async function main(args: readonly string[]): Promise<number> {
   const printed: string[] = [];

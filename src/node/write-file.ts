@@ -17,7 +17,7 @@ const REASONS: Readonly<Record<string, string>> = {
 };
 
 /** One line about a file that cannot be written. */
-function refusal(path: string, error: unknown): InputError {
+export function refusal(path: string, error: unknown): InputError {
   const code = (error as NodeJS.ErrnoException).code ?? "";
   const reason = REASONS[code] ?? (error instanceof Error ? error.message : String(error));
   return new InputError("unwritable", `${path}: cannot be written: ${reason}; choose another file or folder`);

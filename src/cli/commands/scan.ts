@@ -6,19 +6,22 @@ import { scanText, sweepDescriptions, sweepNote, sweepNotes } from "../../output
 import { computeScan } from "../../requests/scan.ts";
 import { scanMarks } from "../../requests/scan-marks.ts";
 import { answerCommand } from "../answer.ts";
+import { longCommand } from "../long-command.ts";
 import type { Options } from "../options.ts";
 
 export function run(options: Options): Promise<void> {
   let rates: RateLibrary;
-  return answerCommand(options, {
-    compute: (keys, library, progress) => {
-      rates = library;
-      return computeScan(keys, library, { progress });
-    },
-    text: scanText,
-    table: (results) => results.table,
-    notes: sweepNotes,
-    describe: (results) => sweepDescriptions(results, DEFINITIONS),
-    figure: (answer, name) => scanFigure(answer.results.table, sweepNote(answer), scanMarks(answer, rates), name),
-  });
+  return longCommand("scan", options, (engine) =>
+    answerCommand(options, {
+      compute: (keys, library, progress) => {
+        rates = library;
+        return computeScan(keys, library, { progress, engine });
+      },
+      text: scanText,
+      table: (results) => results.table,
+      notes: sweepNotes,
+      describe: (results) => sweepDescriptions(results, DEFINITIONS),
+      figure: (answer, name) => scanFigure(answer.results.table, sweepNote(answer), scanMarks(answer, rates), name),
+    }),
+  );
 }

@@ -1,0 +1,83 @@
+/** What commands that run many cases share: threads, a lock on the output, a checkpoint, an orderly end on a signal. */
+import { realpathSync, statSync } from "node:fs";
+import { type Checkpoint, openCheckpoint, withCheckpoint } from "../node/checkpoint.ts";
+import { Interrupted, listenForInterrupt } from "../node/interrupt.ts";
+import { loadRates } from "../node/load-rates.ts";
+import { lockOutput } from "../node/lock.ts";
+import { makePool } from "../node/pool.ts";
+import { requireWritable } from "../node/write-file.ts";
+import { InputError } from "../numerics/check.ts";
+import { ratesDigest } from "../requests/rates-digest.ts";
+import type { TaskEngine } from "../requests/sweep.ts";
+import { taskAnswerer } from "../requests/tasks.ts";
+import { VERSION } from "../version.ts";
+import { type Options, toKeys } from "./options.ts";
+
+/**
+ * Runs a command with a pool of threads. With `--out` the file is locked for this run, and finished pieces are kept in
+ * a checkpoint beside it, from which `--resume` goes on; it is removed when the output is complete.
+ * @param command name of the command
+ * @param run     the command, given the engine for its tasks; it has written its output when it returns
+ * @throws {InputError} if another run writes the same file; {@link Interrupted} on SIGINT or SIGTERM
+ */
+export async function longCommand(
+  command: string,
+  options: Options,
+  run: (engine: TaskEngine) => Promise<void>,
+): Promise<void> {
+  const out = regularTarget(options.out);
+  const resume = options.resume === true;
+  if (resume && out === undefined)
+    throw new InputError("conflict", "--resume: needs --out FILE, beside which the checkpoint of the earlier run lies");
+  if (out !== undefined) await requireWritable(out);
+  const library = loadRates(options.rates);
+  const unlock = out === undefined ? () => {} : await lockOutput(out);
+  const interrupt = listenForInterrupt();
+  let checkpoint: Checkpoint | undefined;
+  try {
+    const keys = toKeys(options);
+    const pool = makePool({
+      jobs: options.jobs as number | undefined,
+      rates: options.rates,
+      answer: taskAnswerer(library),
+      signal: interrupt.signal,
+    });
+    try {
+      if (out !== undefined)
+        checkpoint = openCheckpoint(
+          out,
+          { version: VERSION, command, ...keys, rates: await ratesDigest(library, keys) },
+          resume,
+        );
+      await run(checkpoint === undefined ? pool : withCheckpoint(pool, checkpoint));
+      checkpoint?.remove();
+    } finally {
+      await pool.close();
+    }
+  } catch (error) {
+    throw error instanceof Interrupted ? new Interrupted(interruptedMessage(checkpoint)) : error;
+  } finally {
+    checkpoint?.close();
+    interrupt.dispose();
+    unlock();
+  }
+}
+
+/** The output as a path without links; none for standard output or a device. */
+function regularTarget(out: string | undefined): string | undefined {
+  if (out === undefined) return undefined;
+  const found = statSync(out, { throwIfNoEntry: false });
+  if (found === undefined) return out;
+  return found.isFile() ? realpathSync(out) : undefined;
+}
+
+function interruptedMessage(checkpoint: Checkpoint | undefined): string {
+  if (checkpoint === undefined || checkpoint.kept === 0) return "interrupted: nothing was written";
+  const again = process.argv.slice(2).filter((word) => word !== "--resume");
+  const command = ["emberline", ...again.map(shellWord), "--resume"].join(" ");
+  return `interrupted: ${checkpoint.kept} finished pieces are kept in ${checkpoint.path}; go on with: ${command}`;
+}
+
+function shellWord(word: string): string {
+  return /^[\w@%+=:,./±-]+$/.test(word) ? word : `'${word.replaceAll("'", `'\\''`)}'`;
+}
