@@ -24,6 +24,9 @@ export interface StepRows {
 export interface March {
   /** Abundances after the last step. */
   readonly next: Float64Array;
+  /** Stage increments u_1 ... u_6 and the factored matrix of the last step, for its adjoint. */
+  readonly stages: readonly Float64Array[];
+  readonly factors: Float64Array;
   /**
    * Tries one step of length h from y; the result is in `next`.
    * @returns the largest of |error_i|/(atol_i + rtol max(|y_i|, |next_i|)); Infinity if a pivot fails or a value is not
@@ -44,6 +47,8 @@ export function createMarch(kernels: NetworkKernels, n: number, slots: number): 
   const { derivatives, assemble, factor, solve } = kernels;
   return {
     next,
+    stages: [u1, u2, u3, u4, u5, u6],
+    factors: values,
     step(y, h, rows, rtol, atol) {
       const k = 1 / h;
       assemble(rows.start, y, k / GAMMA, values);

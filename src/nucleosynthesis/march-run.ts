@@ -26,6 +26,9 @@ function workspaceOf(kernels: NetworkKernels, n: number, slots: number, fluxes: 
   return found;
 }
 
+/** Told every accepted step before it is taken: start s, length h, abundances at the start, stages and rows in use. */
+export type StepRecorder = (s: number, h: number, y: Float64Array, march: March, rows: StepRows) => void;
+
 /** Most steps of one run. */
 const MAX_STEPS = 20000;
 
@@ -35,6 +38,7 @@ const MAX_STEPS = 20000;
  * @param scale factor of each flux: powers of eta, rate factors, 1/tau_n
  * @param eta10 for the baryons' share of the energy density (last column of the table)
  * @param atol absolute tolerance of each nuclide
+ * @param record told every accepted step, for the adjoint
  * @throws {CalculationError} with s = -ln T9 where the step underflows or too many steps are needed
  */
 export function marchAdaptively(
@@ -46,6 +50,7 @@ export function marchAdaptively(
   eta10: number,
   rtol: number,
   atol: Float64Array,
+  record?: StepRecorder,
 ): SolverCounts {
   const n = y.length;
   const fluxes = scale.length;
@@ -77,6 +82,7 @@ export function marchAdaptively(
       counts.rhs += 6;
       counts.factorisations++;
       if (error <= 1) {
+        record?.(s, h, y, march, rows);
         y.set(march.next);
         s = final ? end : s + h;
         const e = Math.max(error, 1e-8);

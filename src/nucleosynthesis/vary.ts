@@ -4,7 +4,7 @@ import type { NetworkReaction } from "./network-data.ts";
 import type { RunContext } from "./run.ts";
 
 /** ln f_u of one reaction on the nodes of the table. */
-interface LnUncertainty {
+export interface LnUncertainty {
   readonly constant: boolean;
   readonly value: Float64Array;
   /** d ln f_u/ds */
@@ -13,7 +13,8 @@ interface LnUncertainty {
 
 const cache = new WeakMap<FluxTable, (LnUncertainty | undefined)[]>();
 
-function lnUncertainty(table: FluxTable, reaction: NetworkReaction, r: number): LnUncertainty {
+/** ln f_u of reaction r on the nodes of the table, kept for the next call. */
+export function lnUncertainty(table: FluxTable, reaction: NetworkReaction, r: number): LnUncertainty {
   const kept = cache.get(table) ?? [];
   cache.set(table, kept);
   const known = kept[r];
