@@ -6,6 +6,7 @@ import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { EmberlineError, InputError } from "../numerics/check.ts";
 import { VERSION } from "../version.ts";
 import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
+import { addRatesCommands, RATES, spellRates } from "./rates-commands.ts";
 import { recombinationOptions } from "./recombination-options.ts";
 import { overOptions, resumeOptions } from "./sweep-options.ts";
 
@@ -82,12 +83,13 @@ export function makeProgram(print: (text: string) => void): Command {
     .configureOutput({ writeOut: print, writeErr: () => {} })
     .addHelpText("after", `\nWithout a command: ${DEFAULT_COMMAND} of the default cosmology.`);
   for (const spec of COMMANDS) addCommand(program, spec);
+  addRatesCommands(program);
   return program;
 }
 
 /** Commander takes a stray word for an argument of the default command; here it is an unknown command. */
 function requireKnownCommand(args: readonly string[]): void {
-  const names = [...COMMANDS.map((spec) => spec.name), "help"];
+  const names = [...COMMANDS.map((spec) => spec.name), RATES, "help"];
   const word = args[0] === "help" ? args[1] : args[0];
   if (word === undefined || word.startsWith("-") || names.includes(word)) return;
   const nearest = suggestNearest(word, names);
@@ -100,12 +102,14 @@ const REMEDIES: Readonly<Record<string, string>> = {
   "commander.conflictingOption": "give one of them",
   "commander.excessArguments": "options start with --",
   "commander.optionMissingArgument": "write the value after it",
+  "commander.missingArgument": "write it after the command",
+  "commander.missingMandatoryOptionValue": "add it",
 };
 
 /** A request speaks of keys, `network = x`; on the command line they are options, `--network x`. */
 function nameOptions(message: string): string {
   return message
-    .replace(/^(network|errors|samples|seed|tolerance|rates|scale) (?:= )?/, "--$1 ")
+    .replace(/^(network|errors|samples|seed|tolerance|rates|scale|nuclide) (?:= )?/, "--$1 ")
     .replace(/^expansion /, "--expansion ")
     .replace(/^(h0|z|tauReion|without) = /, (_, key: string) => `--${key === "tauReion" ? "tau-reion" : key} `);
 }
@@ -132,7 +136,7 @@ export async function main(args: readonly string[]): Promise<number> {
   const printed: string[] = [];
   try {
     requireKnownCommand(args);
-    await makeProgram((text) => printed.push(text)).parseAsync(args, { from: "user" });
+    await makeProgram((text) => printed.push(text)).parseAsync(spellRates(args), { from: "user" });
     return 0;
   } catch (error) {
     if (error instanceof CommanderError && error.exitCode === 0) {

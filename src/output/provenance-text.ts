@@ -6,7 +6,7 @@ import type { Envelope, RateUsed } from "./result.ts";
 import { alignColumns, displayWidth, formatEstimate, formatNumber, pad, TEXT_WIDTH, wrap } from "./text.ts";
 
 /** Evaluation name of the fits that are taken as they stand; they are listed together. */
-const COLLECTION = "reaclib";
+export const COLLECTION = "reaclib";
 /** Mark of an uncertainty that no publication backs: assumed, or from memory. */
 export const ASSUMED_MARK = "*";
 

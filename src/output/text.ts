@@ -47,6 +47,11 @@ export function formatEstimate(value: number, sigma?: number): string {
   return `${figure(value)} ± ${figure(sigma)}`;
 }
 
+/** `1 file`, `3 files`. */
+export function counted(count: number, what: string): string {
+  return `${count} ${what}${count === 1 ? "" : "s"}`;
+}
+
 /**
  * Rows of cells as lines, each column as wide as its widest cell, two blanks between.
  * @param right columns that are set flush right, by number
