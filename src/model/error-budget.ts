@@ -5,12 +5,12 @@ import { WEAK_REACTION } from "../nucleosynthesis/network-data.ts";
 import { addCounts, type RunContext, type RunInputs } from "../nucleosynthesis/run.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import { type CosmologyParameters, DEFAULTS, RANGES } from "../parameters/cosmology.ts";
-import { propagateLinearly } from "../uncertainty/propagation.ts";
 import { type CentralStep, centralSensitivities, relativeStep } from "../uncertainty/sensitivity.ts";
-import { applyVariations, type Estimate, errorSources, type Model, scaleFactors } from "./prepare.ts";
+import { linearErrors } from "./linear-errors.ts";
+import { applyVariations, type Estimate, errorSources, type Model, reported, scaleFactors } from "./prepare.ts";
 
-/** Shares by which a parameter is moved to either side; N_eff by an amount. */
-export const SENSITIVITY_STEPS = { omegaB: 0.02, tauN: 0.02, G: 0.02, rate: 0.05, nEff: 0.06 } as const;
+/** Share by which G, amount by which N_eff is moved to either side: these two change the background. */
+export const SENSITIVITY_STEPS = { G: 0.02, nEff: 0.06 } as const;
 /** Thermal neutrino species at which the sensitivity to N is stated: d ln X/d ln N = 3 d ln X/d(deltaNEff). */
 export const SPECIES = 3;
 
@@ -57,23 +57,18 @@ export function listErrorSources(context: RunContext, p: CosmologyParameters): E
   ];
 }
 
-function sensitivitySteps(context: RunContext, p: CosmologyParameters): CentralStep[] {
+function sensitivitySteps(p: CosmologyParameters): CentralStep[] {
   const s = SENSITIVITY_STEPS;
   const up = Math.min(p.deltaNEff + s.nEff, RANGES.deltaNEff.max);
   const down = Math.max(p.deltaNEff - s.nEff, RANGES.deltaNEff.min);
-  return [
-    relativeStep("omegaB", p.eta10, s.omegaB),
-    relativeStep("tauN", p.tauN, s.tauN),
-    { name: "nEff", up, down, lnDistance: (up - down) / SPECIES },
-    relativeStep("G", 1, s.G),
-    ...[WEAK_REACTION, ...context.data.reactions.map((r) => r.id)].map((id) => relativeStep(id, 1, s.rate)),
-  ];
+  return [{ name: "nEff", up, down, lnDistance: (up - down) / SPECIES }, relativeStep("G", 1, s.G)];
 }
 
 /**
- * Error budget by linear propagation. Sensitivities d ln X/d ln p by central differences: omega_b (as eta), tau_n and
- * G (at fixed eta) +-2 %, N_eff +-0.06 as 3 d ln X/d(deltaNEff), each rate +-5 % in both directions at all T (n_p too).
- * Variances by the response to one standard deviation of each source, f_u(T9)^p with p = +-1 for rates.
+ * Error budget by linear propagation. Sensitivities d ln X/d ln p: omega_b (as eta), tau_n, each rate in both
+ * directions at all T (n_p too) from the adjoint of one run; G (at fixed eta, +-2 %) and N_eff (+-0.06, as
+ * 3 d ln X/d(deltaNEff)) by central differences. Variances by the response to one standard deviation of each source,
+ * f_u(T9)^p for rates: the derivative at p = 0, or p = +-1 where f_u is large.
  * @param progress told how many of the runs are done
  * @throws {InputError | CalculationError}
  */
@@ -85,15 +80,12 @@ export function computeErrorBudget(
   const context = model.context(p);
   const factors = scaleFactors(context.data, p.scales, model.library);
   const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
-  const steps = sensitivitySteps(context, p);
+  const steps = sensitivitySteps(p);
   const sources = errorSources(context, p);
-  const total = 1 + 2 * (steps.length + sources);
-  let done = 0;
   let counts: SolverCounts | undefined;
   const run = (where: RunContext, how: RunInputs) => {
     const { names, values, counts: spent } = model.evaluate(where, how);
     counts = counts ? addCounts(counts, spent) : spent;
-    progress?.(++done, total);
     return { names, values };
   };
 
@@ -107,27 +99,44 @@ export function computeErrorBudget(
   };
 
   const reactionIndex = new Map([WEAK_REACTION, ...context.data.reactions.map((r) => r.id)].map((id, i) => [id, i]));
+  const linear = linearErrors(
+    context,
+    inputs,
+    p,
+    values,
+    (Y) => {
+      const all = reported(context, Y);
+      return kept.map((i) => all[i]);
+    },
+    (s, sign) => {
+      const variations = new Float64Array(sources);
+      variations[s] = sign;
+      const { values: all, counts: spent } = model.evaluate(context, applyVariations(context, inputs, p, variations));
+      return { values: kept.map((i) => all[i]), counts: spent };
+    },
+    progress,
+  );
+  counts = addCounts(counts as SolverCounts, linear.counts);
+  const { responses } = linear;
+  // The background depends on N_eff and G: differences; all else are derivatives of the one run.
   const slopes = centralSensitivities(steps, (name, value) => {
-    if (name === "omegaB") return at(context, { ...inputs, eta10: value });
-    if (name === "tauN") return at(context, { ...inputs, tauN: value });
     if (name === "nEff") return at(model.context({ ...p, deltaNEff: value }), inputs);
-    if (name === "G") return at(model.context(p, value), inputs);
-    const scaled = factors.slice();
-    scaled[reactionIndex.get(name) as number] *= value;
-    return at(context, { ...inputs, factors: scaled });
+    return at(model.context(p, value), inputs);
   });
-  const linear = propagateLinearly(values, sources, (s, sign) => {
-    const variations = new Float64Array(sources);
-    variations[s] = sign;
-    return at(context, applyVariations(context, inputs, p, variations));
-  });
+  const sensitivity = (name: string, x: number) => {
+    if (name === "omegaB") return responses.lnEta[x];
+    if (name === "tauN") return responses.lnTau[x];
+    const k = steps.findIndex((step) => step.name === name);
+    return k >= 0 ? slopes[k][x] : responses.lnRate[x][reactionIndex.get(name) as number];
+  };
+  const sensitivityNames = ["omegaB", "tauN", "nEff", "G", ...reactionIndex.keys()];
 
   const list = listErrorSources(context, p);
   const byName = <T>(value: (x: number) => T): Record<string, T> =>
     Object.fromEntries(names.map((name, x) => [name, value(x)]));
   return {
     abundances: byName((x) => ({ value: values[x], sigma: linear.sigma[x] })),
-    sensitivities: byName((x) => Object.fromEntries(steps.map(({ name }, k) => [name, slopes[k][x]]))),
+    sensitivities: byName((x) => Object.fromEntries(sensitivityNames.map((name) => [name, sensitivity(name, x)]))),
     variance: byName((x) => {
       const whole = linear.covariance[x * names.length + x];
       return Object.fromEntries(list.map(({ name }, s) => [name, whole > 0 ? linear.response[s][x] ** 2 / whole : 0]));

@@ -25,9 +25,10 @@ import {
 } from "../parameters/cosmology.ts";
 import { RECOMBINATION_SWITCH_NAMES } from "../recombination/switches.ts";
 import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
-import { type LinearPropagation, propagateLinearly } from "../uncertainty/propagation.ts";
+import type { LinearPropagation } from "../uncertainty/propagation.ts";
 import type { WeakOptions } from "../weak/inputs.ts";
 import { tabulateWeakRates, WEAK_TABLE_SPACING, type WeakTable } from "../weak/table.ts";
+import { linearErrors } from "./linear-errors.ts";
 
 export interface Estimate {
   readonly value: number;
@@ -137,11 +138,8 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
   }
 
   function evaluate(ctx: RunContext, inputs: RunInputs) {
-    const heavy = HEAVY_NETWORKS.includes(ctx.data.name);
     const run = runNetwork(ctx, inputs);
-    const found = finalAbundances(ctx.data.nuclides, run.Y, heavy);
-    const names: AbundanceName[] = [...ABUNDANCE_NAMES, ...(heavy ? HEAVY_ABUNDANCE_NAMES : [])];
-    return { names, values: names.map((name) => found[name] as number), counts: run.counts };
+    return { names: reportedNames(ctx), values: reported(ctx, run.Y), counts: run.counts };
   }
 
   const parameters = (overrides?: Keys) => resolveParameters(mergeKeys(keys, overrides), NUCLEOSYNTHESIS_CORRECTIONS);
@@ -204,13 +202,20 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
         return run.values;
       };
       if (p.errors === "linear") {
-        let done = 0;
-        const linear = propagateLinearly(central.values, sources, (s, sign) => {
-          progress?.(done++, 2 * sources);
-          const variations = new Float64Array(sources);
-          variations[s] = sign;
-          return at(variations);
-        });
+        const linear = linearErrors(
+          ctx,
+          inputs,
+          p,
+          central.values,
+          (Y) => reported(ctx, Y),
+          (s, sign) => {
+            const variations = new Float64Array(sources);
+            variations[s] = sign;
+            return evaluate(ctx, applyVariations(ctx, inputs, p, variations));
+          },
+          progress,
+        );
+        counts = addCounts(counts, linear.counts);
         return report({
           sigma: linear.sigma,
           correlation: { order: central.names, matrix: linear.correlation },
@@ -242,6 +247,17 @@ function weakTable(history: ThermalHistory, xiE: number, switches: WeakOptions):
   const ratio = notAKnotSpline(s, TnueOverT);
   const count = Math.ceil((end - start) / WEAK_TABLE_SPACING) + 1;
   return tabulateWeakRates({ start, end, count }, ratio.value, xiE, switches);
+}
+
+/** The abundances a network reports. */
+export function reportedNames(ctx: RunContext): AbundanceName[] {
+  return [...ABUNDANCE_NAMES, ...(HEAVY_NETWORKS.includes(ctx.data.name) ? HEAVY_ABUNDANCE_NAMES : [])];
+}
+
+/** Their values from a final state. */
+export function reported(ctx: RunContext, Y: ArrayLike<number>): number[] {
+  const found = finalAbundances(ctx.data.nuclides, Y, HEAVY_NETWORKS.includes(ctx.data.name));
+  return reportedNames(ctx).map((name) => found[name] as number);
 }
 
 /** Keeps the last result for its key. */

@@ -24,18 +24,25 @@ export function propagateLinearly(
   sources: number,
   evaluate: (source: number, p: number) => readonly number[],
 ): LinearPropagation {
-  const X = central.length;
-  const response: Float64Array[] = [];
-  const covariance = new Float64Array(X * X);
+  const rows: number[][] = [];
   for (let s = 0; s < sources; s++) {
     const up = evaluate(s, 1);
     const down = evaluate(s, -1);
-    const row = new Float64Array(X);
-    for (let x = 0; x < X; x++) if (up[x] > 0 && down[x] > 0) row[x] = (Math.log(up[x]) - Math.log(down[x])) / 2;
-    response.push(row);
-    for (let i = 0; i < X; i++) for (let j = 0; j < X; j++) covariance[i * X + j] += row[i] * row[j];
+    rows.push(central.map((_, x) => (up[x] > 0 && down[x] > 0 ? (Math.log(up[x]) - Math.log(down[x])) / 2 : 0)));
   }
-  return { response, ...summarise(central, covariance) };
+  return propagateFrom(central, rows);
+}
+
+/**
+ * The same from derivatives that are known.
+ * @param rows rows[s][x] = d ln x/dp_s
+ */
+export function propagateFrom(central: readonly number[], rows: readonly (readonly number[])[]): LinearPropagation {
+  const X = central.length;
+  const covariance = new Float64Array(X * X);
+  for (const row of rows)
+    for (let i = 0; i < X; i++) for (let j = 0; j < X; j++) covariance[i * X + j] += row[i] * row[j];
+  return { response: rows.map((row) => Float64Array.from(row)), ...summarise(central, covariance) };
 }
 
 /** Standard deviations and correlations from a covariance of ln x. */
