@@ -10,6 +10,10 @@ import { type Curve, DASHES, linearAxis, linePanel, milestoneLine, PALETTE, type
 /** Widths (full, at half maximum) shown on either side of the peak. */
 const SIDES = 1.7;
 
+function widthText(width: number | undefined): string {
+  return width === undefined ? "" : `, width ${width.toFixed(1)}`;
+}
+
 /**
  * @param results   of `recombination`: table with z, visibility_per_z
  * @param cosmology for H(z): g(eta) is g(z) H/c
@@ -20,9 +24,10 @@ export function visibilityChart(results: RecombinationResults, cosmology: Cosmol
   const z = numericColumn(table, "z");
   const g = numericColumn(table, "visibility_per_z");
   const background = lateBackground(cosmology);
+  const { zPeak, fwhmZ = zPeak / 2 } = visibility;
   const range = {
-    min: Math.max(0, Math.round((visibility.zPeak - SIDES * visibility.fwhmZ) / 50) * 50),
-    max: Math.round((visibility.zPeak + SIDES * visibility.fwhmZ) / 50) * 50,
+    min: Math.max(0, Math.round((zPeak - SIDES * fwhmZ) / 50) * 50),
+    max: Math.round((zPeak + SIDES * fwhmZ) / 50) * 50,
   };
   const shown = z
     .map((value, i) => ({ z: value, i }))
@@ -52,14 +57,10 @@ export function visibilityChart(results: RecombinationResults, cosmology: Cosmol
     },
     {
       star: milestoneLine(zStar, "last scattering"),
-      "label-g(z)": text(
-        0.97,
-        `g(z): peak ${visibility.zPeak.toFixed(1)}, width ${visibility.fwhmZ.toFixed(1)}`,
-        PALETTE.blue,
-      ),
+      "label-g(z)": text(0.97, `g(z): peak ${zPeak.toFixed(1)}${widthText(visibility.fwhmZ)}`, PALETTE.blue),
       "label-g(η)": text(
         0.89,
-        `g(η): peak ${visibility.zOfEtaPeak.toFixed(1)}, width ${visibility.fwhmZOfEta.toFixed(1)}`,
+        `g(η): peak ${visibility.zOfEtaPeak.toFixed(1)}${widthText(visibility.fwhmZOfEta)}`,
         PALETTE.vermilion,
       ),
     },

@@ -1,6 +1,7 @@
 /** Thomson optical depth, drag depth, conformal time and photon diffusion along the line of sight, cumulated over the steps of a history. */
 import { LIGHT_SPEED } from "../constants/codata.ts";
 import { CM_PER_METRE, CM2_PER_M2, METRE_PER_MPC } from "../constants/units.ts";
+import { CalculationError } from "../numerics/check.ts";
 import { intervalOf } from "../numerics/interpolate.ts";
 import { gaussLegendre } from "../numerics/quadrature.ts";
 import { findRoot } from "../numerics/roots.ts";
@@ -10,7 +11,7 @@ import { totalElectrons } from "../recombination/reionisation.ts";
 import { conformalTime } from "./distances.ts";
 import { baryonLoading } from "./sound-horizon.ts";
 
-/** Everything that is integrated from today to z. Arguments are ln(1 + z) in [0, ln(1 + Z_TOP)]. */
+/** Everything that is integrated from today to z. Arguments are ln(1 + z), from 0 to ln(1 + 1e7). */
 export interface LineOfSight {
   readonly history: IonisationHistory;
   readonly zRe: number | undefined;
@@ -24,7 +25,7 @@ export interface LineOfSight {
   dragDepth(logZ: number): number;
   /** Conformal time since the beginning [Mpc]. */
   conformalTime(logZ: number): number;
-  /** int_z^(Z_TOP) c dz/H [R^2 + (16/15)(1 + R)]/[6 (1 + R)^2 a n_e sigma_T], without reionisation [Mpc^2]. */
+  /** int_z^(1e7) c dz/H [R^2 + (16/15)(1 + R)]/[6 (1 + R)^2 a n_e sigma_T], without reionisation [Mpc^2]. */
   diffusion(logZ: number): number;
   /** d tau/d ln(1 + z). */
   scattering(logZ: number, total?: boolean): number;
@@ -35,8 +36,11 @@ export interface LineOfSight {
 }
 
 const POINTS = 4;
-/** Widest panel in ln(1 + z). */
+/** Widest panels in ln(1 + z), below and above the highest redshift of the tables. */
 const WIDEST = 0.1;
+const WIDEST_ABOVE = 0.35;
+/** Redshift up to which everything is integrated; what is left out of the diffusion is 1e-9 of it. */
+const Z_FAR = 1e7;
 
 /**
  * d tau/d ln(1 + z) per free electron and hydrogen nucleus: c sigma_T n_H/H.
@@ -74,7 +78,8 @@ function panelEdges(history: IonisationHistory, zRe: number | undefined): Float6
   };
   const solved = history.inputs.model !== "saha" ? [...history.logZ] : even(0, Math.log1p(history.zStart), 0.01);
   const last = history.inputs.model !== "saha" ? (solved.pop() as number) : Math.log1p(history.zStart);
-  const edges = [...solved, ...even(last, top, WIDEST), top];
+  const far = Math.log1p(Z_FAR);
+  const edges = [...solved, ...even(last, top, WIDEST), ...even(top, far, WIDEST_ABOVE), far];
   if (zRe === undefined) return Float64Array.from(edges);
   const end = Math.log1p(zRe + 8);
   return Float64Array.from([...even(0, end, 0.02), end, ...edges.filter((x) => x > end + 1e-6)]);
@@ -145,8 +150,8 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
   }
   // Summed from the top, where it is small, down: from today up its first terms would drown the rest.
   for (let i = n - 2; i >= 0; i--) diffusion[i] += diffusion[i + 1];
-  const etaTop = conformalTime(background, Z_TOP);
-  const pathTop = path[n - 1];
+  const etaFar = conformalTime(background, Z_FAR);
+  const pathFar = path[n - 1];
 
   /** Integral from today: the panels before, then a part of one. */
   function upTo(cumulated: Float64Array, which: number, x: number): number {
@@ -170,7 +175,7 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
     opticalDepth: (x, total = true) =>
       upTo(depth, SUM.depth, x) + (total && zRe !== undefined ? upTo(reionised, SUM.reionised, x) : 0),
     dragDepth: (x) => upTo(drag, SUM.drag, x),
-    conformalTime: (x) => etaTop + pathTop - upTo(path, SUM.path, x),
+    conformalTime: (x) => etaFar + pathFar - upTo(path, SUM.path, x),
     diffusion(x) {
       const i = intervalOf(edges, x);
       panel(x, edges[i + 1], undefined);
@@ -179,6 +184,11 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
     scattering: (x, total = true) => perElectron(x) * xe(x, total),
     unitDepth(which) {
       const [cumulated, sum] = which === "optical" ? [depth, SUM.depth] : [drag, SUM.drag];
+      if (!(cumulated[n - 1] > 1))
+        throw new CalculationError(
+          "transparent",
+          `the ${which} depth of recombination does not reach 1 below z = ${Z_FAR}`,
+        );
       const i = intervalOf(cumulated, 1);
       return findRoot((x) => upTo(cumulated, sum, x) - 1, edges[i], edges[i + 1], 1e-10);
     },

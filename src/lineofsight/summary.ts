@@ -1,7 +1,6 @@
 /** The numbers of last scattering and baryon drag that an ionisation history implies. */
 import { ageAt } from "../background/expansion.ts";
 import { SECONDS_PER_JULIAN_YEAR } from "../constants/units.ts";
-import { CalculationError } from "../numerics/check.ts";
 import { findRoot } from "../numerics/roots.ts";
 import { type IonisationHistory, Z_TOP } from "../recombination/history.ts";
 import type { RecombinationInputs } from "../recombination/inputs.ts";
@@ -32,9 +31,9 @@ export interface LineOfSightSummary {
   /** Radiation temperature at zStar. */
   readonly temperatureAtStar_K: number;
   readonly xeAtZ: Readonly<Record<string, number>>;
-  /** x_e = 1/2 in Saha equilibrium and in the model. */
+  /** x_e = 1/2 in Saha equilibrium and in the model; left out if x_e stays above. */
   readonly zHalfIonisedSaha: number;
-  readonly zHalfIonised: number;
+  readonly zHalfIonised?: number;
   readonly visibility: VisibilitySummary;
   /** Redshift and depth of reionisation (electrons of the tanh form); only when asked for. */
   readonly zReionisation?: number;
@@ -50,25 +49,20 @@ export interface LineOfSightResult {
 
 /**
  * Optical depth, visibility, horizons and damping of a history.
- * @throws {CalculationError} if the optical depth does not reach 1 below z = 1e4
+ * @throws {CalculationError} if an optical depth does not reach 1 below z = 1e7
  * @throws {InputError} as {@link reionisationRedshift}
  */
 export function computeLineOfSight(inputs: RecombinationInputs, history: IonisationHistory): LineOfSightResult {
   const zRe = reionisationRedshift(inputs, history);
   const sight = lineOfSight(history, zRe);
   const { background } = history;
-  const depths = sight.depthAtEdges;
-  if (!(depths[depths.length - 1] > 30))
-    throw new CalculationError(
-      "transparent",
-      `the optical depth of recombination is only ${depths[depths.length - 1].toPrecision(3)} at z = 1e4: no last scattering`,
-    );
   const logStar = sight.unitDepth("optical");
   const zStar = Math.expm1(logStar);
   const zDrag = Math.expm1(sight.unitDepth("drag"));
   const rStar = soundHorizon(background, zStar);
   const DM = comovingDistance(background, zStar);
   const decoupling = thermalDecoupling(history);
+  const zHalfIonised = halfIonised(history, sight.edges);
   return {
     sight,
     summary: {
@@ -85,7 +79,7 @@ export function computeLineOfSight(inputs: RecombinationInputs, history: Ionisat
       temperatureAtStar_K: inputs.tCmb * (1 + zStar),
       xeAtZ: { "20": history.xeAt(Math.log1p(20)), "200": history.xeAt(Math.log1p(200)) },
       zHalfIonisedSaha: halfIonisedSaha(history),
-      zHalfIonised: halfIonised(history, sight.edges),
+      ...(zHalfIonised === undefined ? {} : { zHalfIonised }),
       visibility: visibilitySummary(sight),
       ...(zRe === undefined ? {} : { zReionisation: zRe, opticalDepthReionisation: reionisationDepth(history, zRe) }),
       ...(decoupling === undefined ? {} : { zThermalDecoupling: decoupling }),
@@ -94,7 +88,8 @@ export function computeLineOfSight(inputs: RecombinationInputs, history: Ionisat
 }
 
 /** Redshift at which x_e of the history falls below 1/2; x_e falls from high redshift to low. */
-function halfIonised(history: IonisationHistory, edges: Float64Array): number {
+function halfIonised(history: IonisationHistory, edges: Float64Array): number | undefined {
+  if (!(history.xeAt(0) < 0.5)) return undefined;
   let lo = 0;
   let hi = edges.length - 1;
   while (hi - lo > 1) {

@@ -24,19 +24,22 @@ export function visibilityPerMpc(sight: LineOfSight, x: number, total = true): n
 }
 
 export interface VisibilitySummary {
-  /** Maximum of g(z) and its full width at half maximum in z. */
+  /** Maximum of g(z) and its full width at half maximum in z. Widths are left out where today is within them. */
   readonly zPeak: number;
-  readonly fwhmZ: number;
+  readonly fwhmZ?: number;
   /** Maximum of g(eta), its full width at half maximum, and the redshift of the maximum. */
   readonly etaPeak_Mpc: number;
-  readonly fwhmEta_Mpc: number;
+  readonly fwhmEta_Mpc?: number;
   readonly zOfEtaPeak: number;
   /** Width in redshift between the half-maximum points of g(eta). */
-  readonly fwhmZOfEta: number;
+  readonly fwhmZOfEta?: number;
 }
 
 /** Place of the maximum of g and of the two points of half maximum, as ln(1 + z). */
-function peakAndHalves(sight: LineOfSight, g: (x: number) => number): { peak: number; low: number; high: number } {
+function peakAndHalves(
+  sight: LineOfSight,
+  g: (x: number) => number,
+): { peak: number; low: number | undefined; high: number } {
   const { edges } = sight;
   let best = -1;
   let most = 0;
@@ -50,15 +53,16 @@ function peakAndHalves(sight: LineOfSight, g: (x: number) => number): { peak: nu
       best = i;
     }
   }
-  const peak = maximum(g, edges[best - 1], edges[best + 1]);
+  const peak = maximum(g, edges[Math.max(0, best - 1)], edges[best + 1]);
   const half = 0.5 * g(peak);
   const fall = (direction: 1 | -1) => {
     let i = best + direction;
     while (g(edges[i]) > half) i += direction;
+    if (i < 0) return undefined;
     const inner = direction === 1 ? Math.max(peak, edges[i - 1]) : Math.min(peak, edges[i + 1]);
     return findRoot((x) => g(x) - half, inner, edges[i], 1e-10);
   };
-  return { peak, low: fall(-1), high: fall(1) };
+  return { peak, low: fall(-1), high: fall(1) as number };
 }
 
 /** Maximum of a smooth function by golden-section search. */
@@ -92,12 +96,17 @@ function maximum(g: (x: number) => number, from: number, to: number): number {
 export function visibilitySummary(sight: LineOfSight): VisibilitySummary {
   const inZ = peakAndHalves(sight, (x) => visibilityPerZ(sight, x, false));
   const inEta = peakAndHalves(sight, (x) => visibilityPerMpc(sight, x, false));
+  const width = ({ low, high }: typeof inZ) => (low === undefined ? undefined : Math.exp(high) - Math.exp(low));
+  const fwhmZ = width(inZ);
+  const fwhmZOfEta = width(inEta);
   return {
     zPeak: Math.expm1(inZ.peak),
-    fwhmZ: Math.exp(inZ.high) - Math.exp(inZ.low),
+    ...(fwhmZ === undefined ? {} : { fwhmZ }),
     etaPeak_Mpc: sight.conformalTime(inEta.peak),
-    fwhmEta_Mpc: sight.conformalTime(inEta.low) - sight.conformalTime(inEta.high),
+    ...(inEta.low === undefined
+      ? {}
+      : { fwhmEta_Mpc: sight.conformalTime(inEta.low) - sight.conformalTime(inEta.high) }),
     zOfEtaPeak: Math.expm1(inEta.peak),
-    fwhmZOfEta: Math.exp(inEta.high) - Math.exp(inEta.low),
+    ...(fwhmZOfEta === undefined ? {} : { fwhmZOfEta }),
   };
 }

@@ -8,32 +8,69 @@ export interface LocalPolynomial {
   value(v: number, interval?: number): number;
 }
 
-/** Stencil starts and barycentric weights of a grid, shared by every function tabulated on it. */
+/** For each interval the points of its stencil and their barycentric weights, shared by all functions on the grid. */
 interface Stencils {
-  readonly size: number;
+  /** Points of interval i: `points[start[i]] ... points[start[i + 1] - 1]`. */
+  readonly start: Int32Array;
+  readonly points: Int32Array;
   readonly weights: Float64Array;
 }
 
-function stencilStart(interval: number, n: number, size: number): number {
-  return Math.min(Math.max(0, interval + 1 - (size >> 1)), n - size);
+/** Points of a stencil are at least this share of the interval apart. */
+const LEAST_DISTANCE = 0.4;
+
+/**
+ * Points for the interval (x[interval], x[interval + 1]): its ends, then alternately the next one outwards on either
+ * side, passing over points that crowd (polynomials through them would amplify the noise of the ordinates).
+ */
+function stencil(x: Float64Array, interval: number, size: number): number[] {
+  const least = LEAST_DISTANCE * (x[interval + 1] - x[interval]);
+  const left = [interval];
+  const right = [interval + 1];
+  const nextLeft = () => {
+    let k = left[0] - 1;
+    while (k >= 0 && x[left[0]] - x[k] < least) k--;
+    return k;
+  };
+  const nextRight = () => {
+    const last = right[right.length - 1];
+    let k = last + 1;
+    while (k < x.length && x[k] - x[last] < least) k++;
+    return k;
+  };
+  while (left.length + right.length < size) {
+    const l = nextLeft();
+    const r = nextRight();
+    if (l < 0 && r >= x.length) break;
+    if (r >= x.length || (l >= 0 && left.length <= right.length)) left.unshift(l);
+    else right.push(r);
+  }
+  return [...left, ...right];
 }
 
 function stencils(x: Float64Array, size: number): Stencils {
-  const starts = x.length - size + 1;
-  const weights = new Float64Array(starts * size);
-  for (let start = 0; start < starts; start++)
-    for (let i = 0; i < size; i++) {
+  const start = new Int32Array(x.length);
+  const points: number[] = [];
+  const weights: number[] = [];
+  for (let interval = 0; interval < x.length - 1; interval++) {
+    const chosen = stencil(x, interval, size);
+    // Distances in units of the interval: products of eight of them stay within range.
+    const unit = 1 / (x[interval + 1] - x[interval]);
+    for (const i of chosen) {
       let product = 1;
-      for (let j = 0; j < size; j++) if (j !== i) product *= x[start + i] - x[start + j];
-      weights[start * size + i] = 1 / product;
+      for (const j of chosen) if (j !== i) product *= (x[i] - x[j]) * unit;
+      points.push(i);
+      weights.push(1 / product);
     }
-  return { size, weights };
+    start[interval + 1] = points.length;
+  }
+  return { start, points: Int32Array.from(points), weights: Float64Array.from(weights) };
 }
 
 /**
- * Interpolants of several functions on one grid, each through the `size` points nearest to the interval in which the
- * argument falls: order `size` in the spacing, continuous at the points, no derivative needed. Meant for the accepted
- * steps of an integrator, whose slopes are useless where the system is stiff.
+ * Interpolants of several functions on one grid, each through `size` points around the interval in which the argument
+ * falls: order `size` in the spacing, continuous at the points, no derivative needed. Meant for the accepted steps of an
+ * integrator: their slopes are useless where the system is stiff, and their spacing may jump.
  *
  * @param xs increasing abscissae
  * @param ys one array of ordinates per function
@@ -51,7 +88,7 @@ export function localPolynomials(
   if (n < 2) throw new RangeError(`interpolation needs at least two points, got ${n}`);
   for (let i = 1; i < n; i++)
     if (!(x[i] > x[i - 1])) throw new RangeError(`abscissae must increase, but ${x[i]} follows ${x[i - 1]}`);
-  const grid = stencils(x, Math.min(size, n));
+  const { start, points, weights } = stencils(x, size);
   return ys.map((values) => {
     const y = Float64Array.from(values);
     if (y.length !== n) throw new RangeError(`${n} abscissae but ${y.length} ordinates`);
@@ -59,14 +96,15 @@ export function localPolynomials(
       x,
       y,
       value(v, interval) {
-        const start = stencilStart(interval ?? intervalOf(x, v), n, grid.size);
+        const i = interval ?? intervalOf(x, v);
         let numerator = 0;
         let denominator = 0;
-        for (let i = 0; i < grid.size; i++) {
-          const d = v - x[start + i];
-          if (d === 0) return y[start + i];
-          const w = grid.weights[start * grid.size + i] / d;
-          numerator += w * y[start + i];
+        for (let k = start[i]; k < start[i + 1]; k++) {
+          const point = points[k];
+          const d = v - x[point];
+          if (d === 0) return y[point];
+          const w = weights[k] / d;
+          numerator += w * y[point];
           denominator += w;
         }
         return numerator / denominator;

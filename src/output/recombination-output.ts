@@ -41,7 +41,7 @@ function scattering(r: RecombinationResults): Line[] {
 
 function ionisation(r: RecombinationResults): Line[] {
   return [
-    ["z(x_e = 1/2)", r.zHalfIonised.toFixed(2), "x_e = n_e/n_H, above 1 while helium is ionised"],
+    ["z(x_e = 1/2)", r.zHalfIonised?.toFixed(2) ?? "never", "x_e = n_e/n_H, above 1 while helium is ionised"],
     ["z(x_e = 1/2), Saha", r.zHalfIonisedSaha.toFixed(2), "in equilibrium, same cosmology"],
     ...Object.entries(r.xeAtZ).map(([z, xe]): Line => [`x_e at z = ${z}`, formatNumber(xe, 6), "without reionisation"]),
     ...(r.zThermalDecoupling === undefined
@@ -60,7 +60,7 @@ function ionisation(r: RecombinationResults): Line[] {
 function visibility({ visibility: v }: RecombinationResults): Line[] {
   return [
     ["peak of g(z)", `z = ${v.zPeak.toFixed(2)}`, "g(z) = e^-tau |d tau/dz|"],
-    ["width of g(z)", v.fwhmZ.toFixed(2), "full width at half maximum in z (not FWHM/2.355, not r.m.s.)"],
+    ["width of g(z)", v.fwhmZ?.toFixed(2) ?? "none", "full width at half maximum in z (not FWHM/2.355, not r.m.s.)"],
     [
       "peak of g(eta)",
       `${v.etaPeak_Mpc.toFixed(2)} Mpc`,
@@ -68,8 +68,8 @@ function visibility({ visibility: v }: RecombinationResults): Line[] {
     ],
     [
       "width of g(eta)",
-      `${v.fwhmEta_Mpc.toFixed(3)} Mpc`,
-      `full width at half maximum; ${v.fwhmZOfEta.toFixed(2)} between the same points in z`,
+      v.fwhmEta_Mpc === undefined ? "none" : `${v.fwhmEta_Mpc.toFixed(3)} Mpc`,
+      `full width at half maximum${v.fwhmZOfEta === undefined ? "" : `; ${v.fwhmZOfEta.toFixed(2)} between the same points in z`}`,
     ],
   ];
 }

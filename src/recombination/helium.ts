@@ -180,10 +180,7 @@ function channelRate(
   out.logitHe = -s.ionisedHe * (bySobolev + byContinuum);
   out.logitH = s.xp * byContinuum;
   out.lnTm =
-    out.value * alphaSlope -
-    inhibited * betaSlope -
-    0.5 * byContinuum +
-    inhibited * (lambda > 0 ? (-lambda * c.raise) / (Tm * leave) : 0);
+    out.value * alphaSlope - inhibited * betaSlope - 0.5 * byContinuum + inhibited * (-lambda / leave) * (c.raise / Tm);
 }
 
 const singlet = emptyChannel();

@@ -11,11 +11,17 @@ import { comptonCoefficient, temperatureRate } from "./matter-temperature.ts";
 import { sahaCoefficients, sahaEquilibrium } from "./saha.ts";
 import { type RecombinationSystem, recombinationSystem, Y } from "./system.ts";
 
-/** Highest redshift of the tables; above, x_e is the equilibrium value. */
+/** Highest redshift of the tables. */
 export const Z_TOP = 1e4;
+
+/** Above this redshift, where helium is ionised twice but for 1e-9 of it, x_e is taken as constant. */
+const Z_FULL = 2e4;
 
 /** Departure of x_e from equilibrium (relative) below which the equations are not yet integrated. */
 const EQUILIBRIUM_LAG = 1e-10;
+
+/** Largest tolerance of a logit that does not yet move x_e, unless the tolerance itself is larger. */
+const LOOSEST = 1e-3;
 
 /** Ionised share of helium at which its equation ends and its electrons count as none. */
 const HELIUM_END = 1e-9;
@@ -62,11 +68,13 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
   const gammaOverH = comptonOverExpansion(inputs, background);
   // Quasi-steady 1 - T_m/T_r while Compton heating is fast.
   const steadyCooling = (z: number) => (cools ? 1 / (1 + gammaOverH(z, equilibrium(z).xe)) : 0);
-  const integrate = inputs.model === "saha" ? integrateSaha : integrateThreeLevel;
-  const solution = integrate();
+  const solution = inputs.model === "saha" ? integrateSaha() : integrateThreeLevel();
   const { logZ, zStart, counts, tolerance } = solution;
   const logStart = Math.log1p(zStart);
-  const [logXe, logRatio] = localPolynomials(logZ, [solution.logXe, solution.logRatio]);
+  const logFull = Math.log1p(Z_FULL);
+  const fullyIonised = equilibrium(Z_FULL).xe;
+  const equilibriumAt = (x: number) => (x > logFull ? fullyIonised : equilibrium(Math.expm1(x)).xe);
+  const [logXe, logitCooling] = localPolynomials(logZ, [solution.logXe, solution.logitCooling]);
   return {
     ...common,
     zStart,
@@ -75,10 +83,10 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
     tolerance,
     xeAt:
       inputs.model === "saha"
-        ? (x) => equilibrium(Math.expm1(x)).xe
-        : (x, interval) => (x > logStart ? equilibrium(Math.expm1(x)).xe : Math.exp(logXe.value(x, interval))),
+        ? equilibriumAt
+        : (x, interval) => (x > logStart ? equilibriumAt(x) : Math.exp(logXe.value(x, interval))),
     temperatureRatioAt: (x) =>
-      x > logStart ? 1 - steadyCooling(Math.expm1(x)) : cools ? Math.exp(logRatio.value(x)) : 1,
+      x > logStart ? 1 - steadyCooling(Math.expm1(x)) : cools ? 1 / (1 + Math.exp(logitCooling.value(x))) : 1,
   };
 
   function integrateThreeLevel() {
@@ -125,6 +133,7 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
   function collect(system: StiffSystem, y0: Float64Array, zStart: number, full?: RecombinationSystem) {
     const tolerance = inputs.tolerance ?? RECOMBINATION_TOLERANCE;
     const atol = new Float64Array(system.n).fill(tolerance);
+    const widest = Math.min(1e3, Math.max(1, LOOSEST / tolerance));
     const start = -Math.log1p(zStart);
     const stepper = new StiffStepper(system, start, y0, 0, {
       rtol: 0,
@@ -135,23 +144,25 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
     });
     const logZ: number[] = [];
     const logXe: number[] = [];
-    const logRatio: number[] = [];
+    const logitCooling: number[] = [];
     const keep = () => {
       logZ.push(-stepper.t);
-      const ratio = 1 - stepper.y[full ? Y.cooling : 0];
-      if (!(ratio > 0)) throw new CalculationError("matter-temperature", `T_m <= 0 at z = ${Math.expm1(-stepper.t)}`);
-      logRatio.push(Math.log(ratio));
+      const u = stepper.y[full ? Y.cooling : 0];
+      if (!(u < 1)) throw new CalculationError("matter-temperature", `T_m <= 0 at z = ${Math.expm1(-stepper.t)}`);
+      // The logit keeps T_m/T_r between 0 and 1 however loose the tolerance.
+      logitCooling.push(Math.log(Math.max(u, 1e-14) / (1 - u)));
       if (!full) {
         logXe.push(0);
         return;
       }
       const s = full.fill(stepper.t, stepper.y);
       logXe.push(Math.log(s.xe));
-      // The logits matter as far as they move x_e: weight their tolerances by d(logit)/d ln x_e, within a factor 1e3.
+      // The logits matter as far as they move x_e: weight their tolerances by d(logit)/d ln x_e, within a factor 1e3
+      // and never above LOOSEST, since the weights are those of the step's start.
       const electronsH = s.xp * s.neutralH;
       const electronsHe = inputs.fHe * s.ionisedHe * s.neutralHe;
-      atol[Y.hydrogen] = tolerance * Math.min(1e3, s.xe / Math.max(electronsH, 1e-300));
-      atol[Y.helium] = tolerance * Math.min(1e3, s.xe / Math.max(electronsHe, 1e-300));
+      atol[Y.hydrogen] = tolerance * Math.min(widest, s.xe / Math.max(electronsH, 1e-300));
+      atol[Y.helium] = tolerance * Math.min(widest, s.xe / Math.max(electronsHe, 1e-300));
     };
     keep();
     while (!stepper.done) {
@@ -162,7 +173,7 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
     return {
       logZ: Float64Array.from(logZ.reverse()),
       logXe: logXe.reverse(),
-      logRatio: logRatio.reverse(),
+      logitCooling: logitCooling.reverse(),
       counts: stepper.counts,
       tolerance,
     };
