@@ -1,7 +1,8 @@
 /** Reads a folder of rates: ours beside the program, or a user's laid over it. Files are read when first needed. */
 import { readdirSync, readFileSync, statSync } from "node:fs";
-import { dirname, join } from "node:path";
+import { basename, dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
+import type { TextFile } from "../nuclear/csv-rows.ts";
 import { buildLibrary, type LibraryFiles, overlay, type RateLibrary } from "../nuclear/library.ts";
 import { parseReactionId } from "../nuclear/reaction.ts";
 import { InputError } from "../numerics/check.ts";
@@ -58,6 +59,30 @@ export function folderFiles(root: string, shownRoot: string): LibraryFiles {
 
 let own: RateLibrary | undefined;
 
+/** A user's folder laid over our library, nothing in it looked at yet. */
+export interface OpenedFolder {
+  readonly library: RateLibrary;
+  /** How its files are named in messages: this, then their path in the folder. */
+  readonly prefix: string;
+  /** Names at its top. */
+  readonly entries: readonly string[];
+}
+
+function isReactionFolder(name: string): boolean {
+  return name.includes("_") && !name.includes(".");
+}
+
+/** @throws {InputError} if there is no such folder, or it holds nothing of a rate library */
+export function openFolder(folder: string): OpenedFolder {
+  if (statSync(folder, { throwIfNoEntry: false })?.isDirectory() !== true)
+    throw new InputError("library", `rates = ${folder}: no such folder`);
+  const files = folderFiles(folder, folder);
+  const entries = files.list("");
+  if (!entries.some((name) => isReactionFolder(name) || name === "networks" || name === "nuclides.csv"))
+    throw new InputError("library", `rates = ${folder}: holds no reaction folder, networks/ or nuclides.csv`);
+  return { library: overlay(loadRates(), buildLibrary(files)), prefix: join(folder, "."), entries };
+}
+
 /**
  * The rate library. Without `folder` ours; with it the user's folder laid over ours, so that it may hold just the files
  * that differ. Reading is lazy: a run with twelve reactions reads twelve rate files.
@@ -67,18 +92,25 @@ let own: RateLibrary | undefined;
 export function loadRates(folder?: string): RateLibrary {
   own ??= buildLibrary(folderFiles(findRatesFolder(), "rates"));
   if (folder === undefined) return own;
-  if (statSync(folder, { throwIfNoEntry: false })?.isDirectory() !== true)
-    throw new InputError("library", `rates = ${folder}: no such folder`);
-  const files = folderFiles(folder, folder);
-  const entries = files.list("");
-  const reactions = entries.filter((name) => name.includes("_") && !name.includes("."));
-  for (const name of reactions) {
+  const { library, entries } = openFolder(folder);
+  for (const name of entries.filter(isReactionFolder)) {
     const { id } = parseReactionId(name);
     if (id !== name) throw new InputError("library", `${join(folder, name)}: name this folder ${id}`);
   }
-  if (reactions.length === 0 && !entries.includes("networks") && !entries.includes("nuclides.csv"))
-    throw new InputError("library", `rates = ${folder}: holds no reaction folder, networks/ or nuclides.csv`);
-  return overlay(own, buildLibrary(files));
+  return library;
+}
+
+/**
+ * A text file that a user names.
+ * @param option how it was given, for messages: `from`
+ * @throws {InputError} if it cannot be read or is no UTF-8 text
+ */
+export function readText(path: string, option: string): TextFile {
+  const found = statSync(path, { throwIfNoEntry: false })?.isDirectory()
+    ? undefined
+    : folderFiles(dirname(path), dirname(path)).read(basename(path));
+  if (found === undefined) throw new InputError("unreadable", `${option} = ${path}: no such file`);
+  return { file: path, text: found.text };
 }
 
 /** All texts of a folder of rates by path, for a page or a bundle that has no file access. @throws {InputError} as {@link loadRates} */

@@ -60,6 +60,7 @@ export interface RatesShowResults {
   readonly qValueSigma_keV: number;
   /** Where a table has rows [GK]. */
   readonly tableT9?: readonly [number, number];
+  readonly tableRows?: number;
   /** What the source claims [GK]. */
   readonly validT9: readonly [number, number];
   readonly note?: string;
