@@ -91,7 +91,7 @@ const MAX_PASSES = 30;
 const MAX_STEPS = 200_000;
 
 /** Uniform grid in s = -ln T9 from the start to END_T9. */
-function outputGrid(startMeV: number): Float64Array {
+export function outputGrid(startMeV: number): Float64Array {
   const first = -Math.log(mevToT9(startMeV));
   const last = -Math.log(END_T9);
   const intervals = Math.ceil((last - first) / GRID_SPACING);
@@ -148,22 +148,25 @@ export function computeThermalHistory(options: Partial<BackgroundOptions> = {}):
   const last = s.length - 1;
   const lnA = s.map((v, i) => lnAT[i] - lnHeating + v - Math.log(t9ToKelvin(1)));
   for (let i = 0; i <= last; i++) heating[i] = Math.exp(3 * (lnHeating - lnAT[i]));
+  return assembleHistory(s, { t, lnA, TnueOverT: nue, TnumuOverT: numu, H, lnDtds, rho, heating }, total);
+}
+
+/** The columns of a history that are stored; all else follows from them. */
+export const HISTORY_COLUMNS = ["t", "lnA", "TnueOverT", "TnumuOverT", "H", "lnDtds", "rho", "heating"] as const;
+export type HistoryColumns = Record<(typeof HISTORY_COLUMNS)[number], Float64Array>;
+
+/** A history from its columns over s. */
+export function assembleHistory(s: Float64Array, c: HistoryColumns, counts: ThermalHistory["counts"]): ThermalHistory {
+  const last = s.length - 1;
   const rhoPhotons = PHOTONS * t9ToMeV(END_T9) ** 4 * G_CM3_PER_MEV4;
   return {
     s,
-    t,
-    lnA,
-    TnueOverT: nue,
-    TnumuOverT: numu,
-    TnutauOverT: numu,
-    H,
-    lnDtds,
-    rho,
-    heating,
-    nEffComputed: effectiveNeutrinoNumber(rho[last] - rhoPhotons, rhoPhotons),
-    photonToNeutrinoTemperature: 1 / nue[last],
-    counts: total,
-    ...interpolation(s, { t, lnA, nue, numu, H, lnDtds, rho }),
+    ...c,
+    TnutauOverT: c.TnumuOverT,
+    nEffComputed: effectiveNeutrinoNumber(c.rho[last] - rhoPhotons, rhoPhotons),
+    photonToNeutrinoTemperature: 1 / c.TnueOverT[last],
+    counts,
+    ...interpolation(s, { ...c, nue: c.TnueOverT, numu: c.TnumuOverT }),
   };
 }
 

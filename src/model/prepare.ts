@@ -19,6 +19,7 @@ import { notAKnotSpline } from "../numerics/interpolate.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import {
   type CosmologyParameters,
+  DEFAULTS,
   type Keys,
   NUCLEOSYNTHESIS_CORRECTIONS,
   resolveParameters,
@@ -28,6 +29,7 @@ import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts
 import type { LinearPropagation } from "../uncertainty/propagation.ts";
 import type { WeakOptions } from "../weak/inputs.ts";
 import { tabulateWeakRates, WEAK_TABLE_SPACING, type WeakTable } from "../weak/table.ts";
+import { storedHistory, storedWeakTable } from "./default-tables.ts";
 import { linearErrors } from "./linear-errors.ts";
 
 export interface Estimate {
@@ -122,9 +124,13 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
       incompleteDecoupling: !off("incomplete-decoupling"),
       gravity,
     };
-    const backgroundKey = JSON.stringify([options, p.expansion]);
-    const background = history(backgroundKey, () =>
-      computeThermalHistory({ ...options, expansion: expansionFunction(p.expansion, compile) }),
+    const backgroundKey = backgroundKeyOf(options, p.expansion);
+    const plain = backgroundKey === PLAIN_BACKGROUND;
+    const background = history(
+      backgroundKey,
+      () =>
+        (plain ? storedHistory() : undefined) ??
+        computeThermalHistory({ ...options, expansion: expansionFunction(p.expansion, compile) }),
     );
     const switches = {
       coulomb: !off("coulomb"),
@@ -133,7 +139,12 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
       weakMagnetism: !off("finite-mass") && !off("weak-magnetism"),
     };
     const weakKey = JSON.stringify([backgroundKey, switches]);
-    const rates = weak(weakKey, () => weakTable(background, p.xiE, switches));
+    const rates = weak(
+      weakKey,
+      () =>
+        (plain && Object.values(switches).every((on) => on) ? storedWeakTable() : undefined) ??
+        tabulateOver(background, p.xiE, switches),
+    );
     return prepared(JSON.stringify([networkKey, weakKey]), () => prepareRun(data, background, rates));
   }
 
@@ -240,7 +251,8 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
   };
 }
 
-function weakTable(history: ThermalHistory, xiE: number, switches: WeakOptions): WeakTable {
+/** Weak rates over a whole thermal history. */
+export function tabulateOver(history: ThermalHistory, xiE: number, switches: WeakOptions): WeakTable {
   const { s, TnueOverT } = history;
   const start = s[0];
   const end = s[s.length - 1];
@@ -259,6 +271,29 @@ export function reported(ctx: RunContext, Y: ArrayLike<number>): number[] {
   const found = finalAbundances(ctx.data.nuclides, Y, HEAVY_NETWORKS.includes(ctx.data.name));
   return reportedNames(ctx).map((name) => found[name] as number);
 }
+
+function backgroundKeyOf(
+  options: Omit<BackgroundOptions, "rtol" | "expansion" | "startMeV">,
+  expansion: string,
+): string {
+  const constant = trivialExpression(expansion);
+  return JSON.stringify([options, constant ?? expansion]);
+}
+
+/** Key of the background whose tables are stored. */
+const PLAIN_BACKGROUND = backgroundKeyOf(
+  {
+    deltaNEff: 0,
+    xiE: 0,
+    xiMu: 0,
+    xiTau: 0,
+    qedE2: true,
+    qedE3: true,
+    incompleteDecoupling: true,
+    gravity: 1,
+  },
+  DEFAULTS.expansion,
+);
 
 /** Keeps the last result for its key. */
 function keep<T>(): (key: string, compute: () => T) => T {

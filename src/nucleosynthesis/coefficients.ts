@@ -2,7 +2,7 @@
 import type { ThermalHistory } from "../background/history.ts";
 import { BOLTZMANN } from "../constants/codata.ts";
 import { HELIUM4_ATOM_MASS, HYDROGEN_ATOM_MASS } from "../constants/particle.ts";
-import { AVOGADRO_NUMBER, GRAM_PER_U, HBARC_MEV_CM, JOULE_PER_MEV } from "../constants/units.ts";
+import { AVOGADRO_NUMBER, GRAM_PER_U, HBARC_MEV_CM, JOULE_PER_MEV, t9ToKelvin } from "../constants/units.ts";
 import { REFERENCE_YP } from "../parameters/cosmology.ts";
 import type { WeakTable } from "../weak/table.ts";
 import { type FluxDefinition, FluxTable, resample } from "./flux-table.ts";
@@ -28,6 +28,7 @@ export interface Clock {
   readonly start: number;
   readonly step: number;
   readonly count: number;
+  readonly T9: Float64Array;
   /** ln(dt/ds) [s], baryons left out of H. */
   readonly lnDtds: { value: Float64Array; slope: Float64Array };
   /** ln(n_b/N_A) [mol cm^-3]. */
@@ -45,15 +46,15 @@ export function sampleClock(history: ThermalHistory, start: number, end: number,
   const lnRho = resample(history.s, history.rho.map(Math.log), start, step, count);
   const lnRhoN = { value: new Float64Array(count), slope: new Float64Array(count) };
   const lnBaryonShare = { value: new Float64Array(count), slope: new Float64Array(count) };
+  const T9 = Float64Array.from({ length: count }, (_, i) => Math.exp(-(start + i * step)));
   for (let i = 0; i < count; i++) {
-    const T9 = Math.exp(-(start + i * step));
-    const lnN = Math.log(1e-10 * photonDensity(T9 * 1e9)) + lnHeating.value[i];
+    const lnN = Math.log(1e-10 * photonDensity(t9ToKelvin(T9[i]))) + lnHeating.value[i];
     lnRhoN.value[i] = lnN - Math.log(AVOGADRO_NUMBER);
     lnRhoN.slope[i] = -3 + lnHeating.slope[i];
     lnBaryonShare.value[i] = lnN + Math.log(MEAN_BARYON_MASS_G) - lnRho.value[i];
     lnBaryonShare.slope[i] = lnRhoN.slope[i] - lnRho.slope[i];
   }
-  return { start, step, count, lnDtds, lnRhoN, lnBaryonShare };
+  return { start, step, count, T9, lnDtds, lnRhoN, lnBaryonShare };
 }
 
 /** The weak fluxes n -> p and p -> n, per unit 1/tau_n (tau_n in s). */
@@ -68,29 +69,32 @@ export function weakFluxes(clock: Clock, weak: WeakTable): FluxDefinition[] {
   }));
 }
 
-/** Forward and reverse flux of one nuclear reaction or decay. */
+/** Forward and reverse flux of one nuclear reaction or decay; the rate is evaluated once a node for both. */
 export function nuclearFluxes(clock: Clock, reaction: NetworkReaction): FluxDefinition[] {
   const { rate, reverse, reactantMultiplicity, productMultiplicity, selected } = reaction;
-  const reactants = selected.reaction.reactants.length;
-  const products = selected.reaction.products.length;
-  const side = (particles: number, multiplicity: number, ratio: typeof reverse): FluxDefinition => ({
-    etaPower: particles - 1,
-    at(i, s) {
-      const T9 = Math.exp(-s);
-      const ln = rate.lnRate(T9);
-      if (ln === Number.NEGATIVE_INFINITY) return ABSENT;
-      const back = ratio === null ? 0 : ratio.lnRatio(T9);
-      const backSlope = ratio === null ? 0 : ratio.dLnRatiodLnT9(T9);
-      return {
-        ln: ln + back + (particles - 1) * clock.lnRhoN.value[i] + clock.lnDtds.value[i] - Math.log(multiplicity),
-        slope: -(rate.dLnRatedLnT9(T9) + backSlope) + (particles - 1) * clock.lnRhoN.slope[i] + clock.lnDtds.slope[i],
-      };
-    },
-  });
+  const ln = clock.T9.map(rate.lnRate);
+  const slope = clock.T9.map(rate.dLnRatedLnT9);
+  const side = (particles: number, multiplicity: number, ratio: typeof reverse): FluxDefinition => {
+    const densities = particles - 1;
+    const lnMultiplicity = Math.log(multiplicity);
+    return {
+      etaPower: densities,
+      at(i) {
+        if (ln[i] === Number.NEGATIVE_INFINITY) return ABSENT;
+        const T9 = clock.T9[i];
+        const back = ratio === null ? 0 : ratio.lnRatio(T9);
+        const backSlope = ratio === null ? 0 : ratio.dLnRatiodLnT9(T9);
+        return {
+          ln: ln[i] + back + densities * clock.lnRhoN.value[i] + clock.lnDtds.value[i] - lnMultiplicity,
+          slope: -(slope[i] + backSlope) + densities * clock.lnRhoN.slope[i] + clock.lnDtds.slope[i],
+        };
+      },
+    };
+  };
   const none: FluxDefinition = { etaPower: 0, at: () => ABSENT };
   return [
-    side(reactants, reactantMultiplicity, null),
-    reverse === null ? none : side(products, productMultiplicity, reverse),
+    side(selected.reaction.reactants.length, reactantMultiplicity, null),
+    reverse === null ? none : side(selected.reaction.products.length, productMultiplicity, reverse),
   ];
 }
 
