@@ -1,11 +1,18 @@
 /** The answer of `recombination` as text: last scattering with definitions, short table, sensitivities, constants. */
+import { lateBackground } from "../background/expansion.ts";
+import {
+  aubourg2015DragHorizon,
+  desi2025DragHorizon,
+  eisensteinHu1998DragRedshift,
+  huSugiyama1996,
+} from "../lineofsight/published-fits.ts";
 import type { RecombinationResults } from "../model/recombination.ts";
 import { localPolynomials } from "../numerics/local-polynomial.ts";
 import { numericColumn, type Table } from "../numerics/table.ts";
-import { SWITCH_EFFECTS } from "../recombination/effects.generated.ts";
-import { RECOMBINATION_SWITCHES } from "../recombination/switches.ts";
+import type { CosmologyParameters } from "../parameters/cosmology.ts";
 import { entry, titleLine } from "./provenance-text.ts";
-import type { Envelope, RecombinationConstantUsed } from "./result.ts";
+import { constantLines, ingredientLines } from "./recombination-ingredients.ts";
+import type { Envelope } from "./result.ts";
 import { alignColumns, formatNumber, pad, wrap } from "./text.ts";
 
 /** Redshifts of the short table. */
@@ -104,46 +111,23 @@ function sensitivities(s: NonNullable<RecombinationResults["sensitivities"]>): s
   ];
 }
 
-function signed(value: number, digits = 2): string {
-  if (value === 0) return "0";
-  return `${value > 0 ? "+" : "-"}${formatNumber(Math.abs(value), digits)}`;
-}
-
-/** The ingredients with what leaving each out does, in the default cosmology. */
-function switches(answer: Envelope<RecombinationResults>): string[] {
-  const { model, without } = answer.cosmology;
-  const rows = RECOMBINATION_SWITCHES.filter((s) => s.models.includes(model)).map(({ name }) => {
-    const { zStar, xe } = SWITCH_EFFECTS[name];
-    return [`  ${name}`, without.includes(name) ? "out" : "in", signed(zStar), largest(xe)];
-  });
+/** Closed-form fits from the literature, beside the calculation. */
+function publishedFits({ omegaB, omegaC, nEff, ...c }: CosmologyParameters): Line[] {
+  const { omegaM, omegaNuMassive } = lateBackground({ omegaB, omegaC, nEff, ...c });
+  const mpc = (value: number) => `${value.toFixed(2)} Mpc`;
   return [
-    "",
-    "Ingredients, and what leaving one out changes in the default cosmology",
-    ...alignColumns([["  name", "", "z_star", "x_e, relative"], ...rows]),
-  ];
-}
-
-/** Relative change of x_e and redshift where it changes most, among those listed. */
-function largest(xe: Readonly<Record<string, number>>): string {
-  const [z, change] = Object.entries(xe).reduce((a, b) => (Math.abs(b[1]) > Math.abs(a[1]) ? b : a));
-  return change === 0 ? "0" : `${signed(change)} at ${z}`;
-}
-
-/** Every constant with its value and effect, under its source. */
-function constants(used: readonly RecombinationConstantUsed[]): string[] {
-  const head = ["  ", "value", "z_star", "x_e, relative"];
-  const rows = used.map(({ meaning, value, unit, effectPerPercent: { zStar, xe } }) => [
-    `  ${meaning}`,
-    `${value}${unit === "1" ? "" : ` ${unit}`}`,
-    signed(zStar),
-    largest(xe),
-  ]);
-  const [first, ...lines] = alignColumns([head, ...rows]);
-  return [
-    "",
-    ...wrap("Constants and fits, and what +1 % of each (of q and T1 themselves) changes in the default cosmology"),
-    first,
-    ...used.flatMap(({ source }, i) => [...(source === used[i - 1]?.source ? [] : wrap(source, "  ", "  ")), lines[i]]),
+    ["z_star", huSugiyama1996(omegaB, omegaM).toFixed(1), "Hu & Sugiyama 1996, physics of its time: about 2 too high"],
+    [
+      "z_drag",
+      eisensteinHu1998DragRedshift(omegaB, omegaM).toFixed(1),
+      "Eisenstein & Hu 1998, another definition: about 40 too low",
+    ],
+    [
+      "r_drag",
+      mpc(aubourg2015DragHorizon(omegaB, omegaB + omegaC, omegaNuMassive)),
+      "Aubourg et al. 2015, for N_eff = 3.046",
+    ],
+    ["r_drag", mpc(desi2025DragHorizon(omegaB, omegaM, nEff)), "DESI Collaboration 2025"],
   ];
 }
 
@@ -186,8 +170,9 @@ export function recombinationText(answer: Envelope<RecombinationResults>): strin
     ...shortTable(r.table),
     ...wrap(`${r.table.rows.length} rows with --format csv, ecsv or json; --z 1100,1089.5 for exact redshifts.`, "  "),
     ...(r.sensitivities === undefined ? [] : sensitivities(r.sensitivities)),
-    ...switches(answer),
-    ...constants(answer.provenance.recombination ?? []),
+    ...(answer.cosmology.nEff > 0 ? section("Published fits, for comparison", publishedFits(answer.cosmology)) : []),
+    ...ingredientLines(answer),
+    ...constantLines(answer.provenance.recombination ?? []),
     ...calculation(answer),
   ];
   return `${lines.join("\n")}\n`;
