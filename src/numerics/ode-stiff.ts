@@ -98,6 +98,7 @@ export class StiffStepper {
     const { n } = system;
     this.system = system;
     this.tableau = METHODS[options.method ?? "rodas4"];
+    if (!system.solver && !system.jacobian) throw new RangeError("stiff integration: needs a jacobian or a solver");
     this.solver = system.solver ?? denseSolver(n, system.jacobian as Jacobian);
     this.t = t0;
     this.tOld = t0;
@@ -127,11 +128,14 @@ export class StiffStepper {
   /**
    * Advances by one accepted step, never past `limit` (default tEnd).
    * @throws {CalculationError} with t and the reason if the step underflows, a pivot fails or maxSteps is reached
+   * @throws {RangeError} if the limit is not ahead
    */
   step(limit: number = this.tEnd): void {
     const { system, solver, tableau, u, w, f0, ft, f1, counts, y, yOld, atol, rtol } = this;
     const n = system.n;
     const t = this.t;
+    if (!(this.direction * (limit - t) > 0))
+      throw new RangeError(`stiff integration: limit ${limit} is not ahead of ${t} on the way to ${this.tEnd}`);
     if (counts.steps >= this.maxSteps)
       throw new CalculationError(
         "steps",

@@ -1,6 +1,9 @@
 /** Roots of a function of one variable. */
 import { CalculationError } from "./check.ts";
 
+/** Enough to bisect the whole range of numbers. */
+const MAX_ITERATIONS = 2200;
+
 /**
  * Root of f in [a, b] by Brent's method (bisection, secant, inverse quadratic), to `tolerance` in x.
  * @throws {CalculationError} if f(a) and f(b) have the same sign or f is not finite
@@ -16,7 +19,7 @@ export function findRoot(f: (x: number) => number, a: number, b: number, toleran
   let fc = fa;
   let d = b - a;
   let e = d;
-  for (let i = 0; i < 200; i++) {
+  for (let i = 0; i < MAX_ITERATIONS; i++) {
     if (fb * fc > 0) {
       c = a;
       fc = fa;
@@ -64,6 +67,7 @@ export function findRoot(f: (x: number) => number, a: number, b: number, toleran
     fa = fb;
     b += Math.abs(d) > tol ? d : m > 0 ? tol : -tol;
     fb = f(b);
+    if (Number.isNaN(fb)) throw new CalculationError("root", `function is not a number at ${b}`);
   }
   throw new CalculationError("root", `no convergence between ${a} and ${b}`);
 }
