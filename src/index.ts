@@ -33,19 +33,34 @@ export {
 } from "./nucleosynthesis/abundances.ts";
 export { tabulateWeakRates, type WeakTable } from "./weak/table.ts";
 
+// recombination, line of sight
+
+export { ageAt, type LateBackground, type LateCosmology, lateBackground } from "./background/expansion.ts";
+export { comovingDistance, conformalTime } from "./lineofsight/distances.ts";
+export { soundHorizon } from "./lineofsight/sound-horizon.ts";
+export { computeLineOfSight, type LineOfSightSummary } from "./lineofsight/summary.ts";
+export { adaptiveTable, tableAt } from "./lineofsight/table.ts";
+export { heliumMassFraction, heliumToHydrogen } from "./parameters/helium.ts";
+export { computeIonisationHistory, type IonisationHistory } from "./recombination/history.ts";
+export type { RecombinationInputs } from "./recombination/inputs.ts";
+export { RECOMBINATION_SWITCHES } from "./recombination/switches.ts";
+
 // model: prepared once, asked often
 
 export type { AbundanceRun, Estimate, Model } from "./model/prepare.ts";
+export type { RecombinationResults } from "./model/recombination.ts";
 
 // output, charts
 
 export type { Figure, LineChart, Panel } from "./charts/figure.ts";
 export { historyFigure } from "./charts/history.ts";
+export { recombinationFigure } from "./charts/recombination.ts";
 export { abundancesTable, abundancesText } from "./output/abundances-output.ts";
 export { toCsv } from "./output/csv.ts";
 export { toEcsv } from "./output/ecsv.ts";
 export { historyText } from "./output/history-output.ts";
 export { toJson } from "./output/json.ts";
+export { recombinationText } from "./output/recombination-output.ts";
 
 // requests: one function a command
 
@@ -60,5 +75,6 @@ export type {
 } from "./requests/envelope.ts";
 export { computeHistory } from "./requests/history.ts";
 export { modelFor as prepare } from "./requests/model-for.ts";
+export { computeRecombination, type RecombinationKeys } from "./requests/recombination.ts";
 
 export { VERSION } from "./version.ts";

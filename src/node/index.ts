@@ -1,11 +1,13 @@
 /** The library on Node: the public names of the browser library, with rates/ read from disk and charts as files. */
 import type { AnyChart, Figure } from "../charts/figure.ts";
 import type { Model } from "../model/prepare.ts";
+import type { RecombinationResults } from "../model/recombination.ts";
 import type { Keys } from "../parameters/cosmology.ts";
 import { computeAbundances } from "../requests/abundances.ts";
 import type { AbundanceResults, Envelope, HistoryResults } from "../requests/envelope.ts";
 import { computeHistory } from "../requests/history.ts";
 import { modelFor } from "../requests/model-for.ts";
+import { computeRecombination, type RecombinationKeys } from "../requests/recombination.ts";
 import { loadRates } from "./load-rates.ts";
 
 export * from "../index.ts";
@@ -35,6 +37,14 @@ export async function abundances(keys: Keys = {}, { rates }: RatesOption = {}): 
 /** The answer of the command `history`. @throws {InputError | CalculationError} */
 export async function history(keys: Keys = {}, { rates }: RatesOption = {}): Promise<Envelope<HistoryResults>> {
   return computeHistory(keys, loadRates(rates));
+}
+
+/** The answer of the command `recombination`. @throws {InputError | CalculationError} */
+export async function recombination(
+  keys: RecombinationKeys = {},
+  { rates }: RatesOption = {},
+): Promise<Envelope<RecombinationResults>> {
+  return computeRecombination(keys, loadRates(rates));
 }
 
 /**

@@ -120,3 +120,11 @@ describe("bad input", () => {
     );
   });
 });
+
+// No machine changes these: measured 362 steps, 4 rejected, 2904 right-hand sides at the default tolerance; 10 % margin.
+test("cost in steps and right-hand sides", () => {
+  const { counts } = computeIonisationHistory(STANDARD);
+  expect(counts.steps).toBeLessThan(400);
+  expect(counts.rejected).toBeLessThan(10);
+  expect(counts.rhs).toBeLessThan(3200);
+});
