@@ -3,7 +3,7 @@ import { Argument, type Command, Option } from "commander";
 import type { RateLibrary } from "../nuclear/library.ts";
 import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { InputError } from "../numerics/check.ts";
-import { type Options, outputOptions, strictNumber } from "./options.ts";
+import { nucleosynthesisOptions, type Options, outputOptions, strictNumber } from "./options.ts";
 
 /** One command of the group: as those of the first level, with words after its name. */
 interface RatesSpec {
@@ -69,6 +69,17 @@ const SPECS: readonly RatesSpec[] = [
     ],
     example: 'emberline rates show "d(p,g)he3" --evaluation mossa2020 --t9 0.1,0.8 --chart rate.svg',
     load: () => import("./commands/rates-show.ts"),
+  },
+  {
+    name: "compare",
+    summary: "evaluations of one rate side by side, and how much every abundance moves if they are swapped",
+    words: [
+      reactionWord(),
+      new Argument("[evaluations...]", "names, the reference first (default: all, the network's first)"),
+    ],
+    options: () => [...nucleosynthesisOptions(), ...outputOptions(["ratio", "sensitivity", "abundances"])],
+    example: 'emberline rates compare "7Be(n,p)7Li" desouza2020 damone2018 --chart compare.svg',
+    load: () => import("./commands/rates-compare.ts"),
   },
   {
     name: "check",

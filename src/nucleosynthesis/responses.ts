@@ -16,8 +16,13 @@ export interface Responses {
   readonly variation: readonly Float64Array[];
   readonly lnEta: Float64Array;
   readonly lnTau: Float64Array;
+  /** further[x][q] = d ln X/d(parameter that enters the fluxes with the q-th further weight). */
+  readonly further: readonly Float64Array[];
   readonly counts: SolverCounts;
 }
+
+/** Weights of this file, before the further ones: rates, uncertainties, eta. */
+const OWN_WEIGHTS = 3;
 
 /** Relative step of the differences of the initial state, which is cheap and smooth. */
 const START_STEP = 1e-3;
@@ -25,12 +30,14 @@ const START_STEP = 1e-3;
 /**
  * One run with its adjoint: exact derivatives of the discrete solution, at the cost of some runs whatever their number.
  * @param quantities maps final abundances to the quantities asked for (positive; a quantity of 0 gets zero derivatives)
+ * @param weights ways in which further parameters enter the fluxes (not the start of the network)
  * @throws {CalculationError} as the integration
  */
 export function computeResponses(
   context: RunContext,
   inputs: RunInputs,
   quantities: (Y: Float64Array) => readonly number[],
+  weights: readonly ReactionWeight[] = [],
 ): Responses {
   const { compiled } = context.data;
   const table = inputs.table ?? context.table;
@@ -73,6 +80,7 @@ export function computeResponses(
     },
     uncertaintyWeight(context, table),
     etaWeight(table, inputs.eta10),
+    ...weights,
   ]);
   const initial = (changed: Partial<RunInputs>) => initialAbundances(context, { ...inputs, ...changed }).Y;
   const difference = (up: Float64Array, down: Float64Array) => up.map((x, i) => (x - down[i]) / (2 * START_STEP));
@@ -97,6 +105,7 @@ export function computeResponses(
     variation: values.map((_, x) => gradient[x].slice(count, 2 * count)),
     lnEta: Float64Array.from(values, (_, x) => total(x, 2) + dot(x, byEta)),
     lnTau: Float64Array.from(values, (_, x) => dot(x, byTau) - gradient[x][0]),
+    further: values.map((_, x) => Float64Array.from(weights, (__, q) => total(x, OWN_WEIGHTS + q))),
     counts: addCounts(start.counts, counts),
   };
 }

@@ -97,3 +97,51 @@ export interface RatesMakeResults {
   readonly text: string;
   readonly table: Table;
 }
+
+/** One of the evaluations compared. */
+export interface ComparedEvaluation {
+  readonly evaluation: string;
+  readonly citation: string;
+  readonly uncertaintyBasis: RateTable["uncertaintyBasis"];
+  readonly factorUncertainty: number;
+  readonly validT9: readonly [number, number];
+}
+
+/** How one abundance depends on the rate compared. */
+export interface ComparedAbundance {
+  /** With the reference. */
+  readonly value: number;
+  /** d ln X/d ln rate at all temperatures. */
+  readonly sensitivity: number;
+  /** T9 that holds the middle 90 per cent of the sensitivity [GK]; left out where there is none. */
+  readonly range?: readonly [number, number];
+  /** d ln X for one standard deviation of the reference's own uncertainty. */
+  readonly standardDeviation: number;
+  /** d ln X/(d ln rate d ln T9) at `sensitivityT9`. */
+  readonly density: readonly number[];
+}
+
+/** An abundance with another evaluation. */
+export interface SwappedAbundance {
+  readonly value: number;
+  /** value/reference - 1 by a run with the other evaluation. */
+  readonly change: number;
+  /** The same to first order: exp of the integral of the sensitivity times ln(rate ratio), less 1. */
+  readonly firstOrder: number;
+}
+
+/** `results` of `rates compare`. */
+export interface RatesCompareResults {
+  readonly action: "compare";
+  readonly reaction: string;
+  /** Evaluation that the others are compared with. */
+  readonly reference: string;
+  readonly evaluations: readonly ComparedEvaluation[];
+  /** T9, then `ratio_NAME` and `f_u_NAME` of each other evaluation, the reference's f_u among them. */
+  readonly table: Table;
+  /** Left out where no network holds the reaction. */
+  readonly abundances?: Readonly<Record<string, ComparedAbundance>>;
+  readonly sensitivityT9?: readonly number[];
+  /** swaps[evaluation][abundance] */
+  readonly swaps?: Readonly<Record<string, Readonly<Record<string, SwappedAbundance>>>>;
+}
