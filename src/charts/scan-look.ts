@@ -60,3 +60,14 @@ export function axisTitle(key: string): string {
   const { meaning, unit } = RANGES[key];
   return `${meaning.replace(/, instead of .*/, "")}${unit === "" ? "" : ` [${unit}]`}`;
 }
+
+/** Panels by name, from top to bottom: axis title, abundances, share of the height. */
+export const PANELS = {
+  helium: { title: "Yₚ", abundances: ["Yp"], weight: 3 },
+  deuterium: { title: "D/H, ³He/H", abundances: ["dToH", "he3ToH"], weight: 4 },
+  lithium: { title: "⁷Li/H", abundances: ["li7ToH"], weight: 3 },
+} as const;
+export type PanelName = keyof typeof PANELS;
+
+/** Names for `--chart NAME=FILE`. */
+export const SCAN_CHARTS = Object.keys(PANELS) as PanelName[];

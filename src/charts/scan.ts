@@ -6,19 +6,19 @@ import { type Figure, type LineChart, singleFigure } from "./figure.ts";
 import { densityBand, frame, labels, observedBoxes, type View } from "./scan-annotations.ts";
 import { compactLinearAxis, compactLogAxis, factorTicks, sameWidth } from "./scan-axes.ts";
 import { type BandedCurve, bandedCurves, orderedAxes } from "./scan-curves.ts";
-import { axisTitle, LOOKS, type Look, type ObservedRange, RAMP, type ScanMarks, TEXT } from "./scan-look.ts";
+import {
+  axisTitle,
+  LOOKS,
+  type Look,
+  type ObservedRange,
+  PANELS,
+  type PanelName,
+  RAMP,
+  SCAN_CHARTS,
+  type ScanMarks,
+  TEXT,
+} from "./scan-look.ts";
 import { FONT_FAMILY, MUTED, type Point, type Range } from "./style.ts";
-
-/** Panels by name, from top to bottom: axis title, abundances, share of the height. */
-const PANELS = {
-  helium: { title: "Yₚ", abundances: ["Yp"], weight: 3 },
-  deuterium: { title: "D/H, ³He/H", abundances: ["dToH", "he3ToH"], weight: 4 },
-  lithium: { title: "⁷Li/H", abundances: ["li7ToH"], weight: 3 },
-} as const;
-type PanelName = keyof typeof PANELS;
-
-/** Names for `--chart NAME=FILE`. */
-export const SCAN_CHARTS = Object.keys(PANELS) as PanelName[];
 
 /** The sheet [px]: at 86 mm, the width of a journal's column, its letters are 7 point high. */
 const SHEET = { width: 430, height: 640, single: 340 } as const;

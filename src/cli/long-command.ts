@@ -9,7 +9,7 @@ import { requireWritable } from "../node/write-file.ts";
 import { InputError } from "../numerics/check.ts";
 import { ratesDigest } from "../requests/rates-digest.ts";
 import type { TaskEngine } from "../requests/sweep.ts";
-import { taskAnswerer } from "../requests/tasks.ts";
+import { pointAnswerer } from "../requests/tasks.ts";
 import { VERSION } from "../version.ts";
 import { type Options, toKeys } from "./options.ts";
 
@@ -39,7 +39,7 @@ export async function longCommand(
     const pool = makePool({
       jobs: options.jobs as number | undefined,
       rates: options.rates,
-      answer: taskAnswerer(library),
+      answer: pointAnswerer(library),
       signal: interrupt.signal,
     });
     try {

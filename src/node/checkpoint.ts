@@ -1,6 +1,15 @@
 /** Checkpoint of a long run: every finished piece is a line of a file beside the output, and is not computed again. */
 import { createHash } from "node:crypto";
-import { closeSync, existsSync, fsyncSync, openSync, readFileSync, truncateSync, unlinkSync, writeFileSync } from "node:fs";
+import {
+  closeSync,
+  existsSync,
+  fsyncSync,
+  openSync,
+  readFileSync,
+  truncateSync,
+  unlinkSync,
+  writeFileSync,
+} from "node:fs";
 import { InputError } from "../numerics/check.ts";
 import type { Engine } from "../sweep/engine.ts";
 import { refusal } from "./write-file.ts";

@@ -1,7 +1,8 @@
 /** The pool: this thread and, where the measured cost says that it pays, workers beside it. Answers never depend on it. */
 import { availableParallelism } from "node:os";
 import type { TaskEngine } from "../requests/sweep.ts";
-import type { Task, TaskAnswer } from "../requests/tasks.ts";
+import type { PointAnswerer, PointTask } from "../requests/tasks.ts";
+import type { PointAnswer } from "../sweep/point.ts";
 import { makeSchedule } from "../sweep/schedule.ts";
 import { startWorker, type WorkerThread } from "./worker-thread.ts";
 
@@ -12,7 +13,7 @@ export interface PoolOptions {
   /** Folder of a second rate library, for the workers. */
   readonly rates?: string;
   /** Answers a task in this thread. */
-  readonly answer: (task: Task) => Promise<TaskAnswer>;
+  readonly answer: PointAnswerer;
   /** Ends the work with the signal's reason. */
   readonly signal?: AbortSignal;
 }
@@ -60,19 +61,19 @@ export function makePool(options: PoolOptions): Pool {
 const breathe = () => new Promise<void>((resolve) => setImmediate(resolve));
 
 async function answerWith(
-  tasks: readonly Task[],
-  affinity: (task: Task, index: number) => string,
-  done: ((answer: TaskAnswer, index: number) => void) | undefined,
+  tasks: readonly PointTask[],
+  affinity: (task: PointTask, index: number) => string,
+  done: ((answer: PointAnswer, index: number) => void) | undefined,
   { answer, signal }: PoolOptions,
   workers: readonly WorkerThread[],
   startWorkers: (() => void) | undefined,
-): Promise<TaskAnswer[]> {
+): Promise<PointAnswer[]> {
   const schedule = makeSchedule(tasks.length, (i) => affinity(tasks[i], i));
-  const answers = new Array<TaskAnswer>(tasks.length);
+  const answers = new Array<PointAnswer>(tasks.length);
   let failure: { readonly index: number; readonly error: unknown } | undefined;
   let own = { tasks: 0, ms: 0 };
   const mean = () => own.ms / Math.max(1, own.tasks);
-  const record = (index: number, found: TaskAnswer) => {
+  const record = (index: number, found: PointAnswer) => {
     answers[index] = found;
     done?.(found, index);
   };
@@ -90,7 +91,7 @@ async function answerWith(
       worker.send(indices.map((i) => tasks[i])).forEach((promise, k) => {
         const settled = promise
           .then(
-            (found) => record(indices[k], found),
+            (found) => record(indices[k], found as PointAnswer),
             (error) => fail(indices[k], error),
           )
           .then(() => {

@@ -38,7 +38,11 @@ function workerEntry(): URL {
 }
 
 function sourceEntry(): URL {
-  const loader = pathToFileURL(createRequire(import.meta.url).resolve("tsx/esm/api").replace(/\.cjs$/, ".mjs")).href;
+  const loader = pathToFileURL(
+    createRequire(import.meta.url)
+      .resolve("tsx/esm/api")
+      .replace(/\.cjs$/, ".mjs"),
+  ).href;
   const source = new URL("./worker.ts", import.meta.url).href;
   const code = `import { register } from ${JSON.stringify(loader)}; register(); await import(${JSON.stringify(source)});`;
   return new URL(`data:text/javascript,${encodeURIComponent(code)}`);

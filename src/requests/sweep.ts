@@ -29,10 +29,10 @@ import type { PointAnswer, PointQuestion } from "../sweep/point.ts";
 import type { Progress, Provenance } from "./envelope.ts";
 import { modelFor } from "./model-for.ts";
 import { nucleosynthesisProvenance } from "./provenance.ts";
-import { type PointTask, type Task, type TaskAnswer, taskAnswerer } from "./tasks.ts";
+import { type PointTask, pointAnswerer } from "./tasks.ts";
 
 /** Engine for the tasks of a request. */
-export type TaskEngine = Engine<Task, TaskAnswer>;
+export type TaskEngine = Engine<PointTask, PointAnswer>;
 
 /** A request with axes. */
 export interface SweepKeys extends Keys {
@@ -110,7 +110,7 @@ export async function prepareSweep(
     sources,
     first,
     end,
-    engine: options.engine ?? singleThread(taskAnswerer(library)),
+    engine: options.engine ?? singleThread(pointAnswerer(library)),
   };
 }
 
@@ -142,7 +142,7 @@ export async function runSweep(sweep: PreparedSweep, progress?: Progress): Promi
       () => progress?.(++done / questions.length, what, questions.length),
     );
     for (const answer of answers) counts = addCounts(counts, answer.counts);
-    return answers as PointAnswer[];
+    return answers;
   };
   const sampled = parameters.errors === "sampled";
   const answers = await ask(

@@ -1,9 +1,10 @@
 /** Work that may go to another thread: what is asked, and how any thread answers it. */
-import type { Model } from "../model/prepare.ts";
 import type { RateLibrary } from "../nuclear/library.ts";
 import type { Keys } from "../parameters/cosmology.ts";
-import { answerPoint, type PointAnswer, type PointQuestion } from "../sweep/point.ts";
-import { modelFor } from "./model-for.ts";
+import { answerPoint as answerPointOf, type PointAnswer, type PointQuestion } from "../sweep/point.ts";
+import { answerLine } from "./batch-line.ts";
+import type { Kept } from "./dispatch.ts";
+import { ModelCache } from "./model-cache.ts";
 
 /** One point of a scan, grid or check. */
 export interface PointTask {
@@ -13,33 +14,39 @@ export interface PointTask {
   readonly question: PointQuestion;
 }
 
-export type Task = PointTask;
-export type TaskAnswer = PointAnswer;
-
-/** Models kept by their keys; the one unused for longest makes room. */
-export class ModelCache {
-  readonly #library: RateLibrary;
-  readonly #models = new Map<string, Model>();
-  constructor(library: RateLibrary) {
-    this.#library = library;
-  }
-
-  /** The model of these keys, prepared at its first use. @throws {InputError} as {@link modelFor} */
-  async get(keys: Keys): Promise<Model> {
-    const name = JSON.stringify(keys);
-    const model = this.#models.get(name) ?? (await modelFor(keys, this.#library));
-    this.#models.delete(name);
-    this.#models.set(name, model);
-    if (this.#models.size > KEPT_MODELS) this.#models.delete(this.#models.keys().next().value as string);
-    return model;
-  }
+/** One line of a batch. */
+export interface LineTask {
+  readonly kind: "line";
+  /** Number of the line, from 1. */
+  readonly line: number;
+  readonly text: string;
 }
 
-/** Models a thread keeps: each holds a thermal history and a rate table, a few MB. */
-const KEPT_MODELS = 4;
+/** The answer to a line, as a line; errors stand in it. */
+export interface LineAnswer {
+  readonly text: string;
+}
 
-/** A function that answers tasks one after the other. */
-export function taskAnswerer(library: RateLibrary): (task: Task) => Promise<TaskAnswer> {
+export type Task = PointTask | LineTask;
+export type TaskAnswer = PointAnswer | LineAnswer;
+export type PointAnswerer = (task: PointTask) => Promise<PointAnswer>;
+
+/** A function that answers questions about points one after the other, in this thread. */
+export function pointAnswerer(library: RateLibrary, models = new ModelCache(library)): PointAnswerer {
+  return async (task) => answerPointOf(await models.get(task.base), task.question);
+}
+
+/** Answers any task. */
+export interface TaskAnswerer {
+  (task: LineTask): Promise<LineAnswer>;
+  (task: Task): Promise<TaskAnswer>;
+  (task: PointTask): Promise<PointAnswer>;
+}
+
+/** A function that answers tasks one after the other, keeping what the next may share. */
+export function taskAnswerer(library: RateLibrary): TaskAnswerer {
   const models = new ModelCache(library);
-  return async (task) => answerPoint(await models.get(task.base), task.question);
+  const answerPoint = pointAnswerer(library, models);
+  const kept: Kept = { library, models, answerPoint };
+  return ((task: Task) => (task.kind === "point" ? answerPoint(task) : answerLine(task, kept))) as TaskAnswerer;
 }

@@ -1,0 +1,36 @@
+/** The commands that run many cases, as entries of the command line. */
+import type { Option } from "commander";
+import { SCAN_CHARTS } from "../charts/scan-look.ts";
+import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
+import { batchOptions, overOptions, resumeOptions } from "./sweep-options.ts";
+
+interface SweepCommand {
+  readonly name: string;
+  readonly summary: string;
+  readonly options: () => readonly Option[];
+  readonly example: string;
+  readonly load: () => Promise<{ run(options: Options): Promise<void> }>;
+}
+
+export const SWEEP_COMMANDS: readonly SweepCommand[] = [
+  {
+    name: "scan",
+    summary: "abundances along one or two parameters: the diagram against the baryon density and its relatives",
+    options: () => [
+      ...overOptions(),
+      ...nucleosynthesisOptions(),
+      ...errorOptions(),
+      ...outputOptions(SCAN_CHARTS),
+      ...resumeOptions(),
+    ],
+    example: "emberline scan --over eta10=1:10:100log --chart diagram.svg --format csv --out scan.csv",
+    load: () => import("./commands/scan.ts"),
+  },
+  {
+    name: "batch",
+    summary: "one JSON request a line on standard input, one JSON answer a line on standard output, in order",
+    options: batchOptions,
+    example: `echo '{"command": "abundances", "omegaB": 0.022, "network": "twelve"}' | emberline batch`,
+    load: () => import("./commands/batch.ts"),
+  },
+];
