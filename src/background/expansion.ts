@@ -3,7 +3,7 @@ import { BOLTZMANN, HBAR, LIGHT_SPEED, NEWTON_G } from "../constants/codata.ts";
 import { HUNDRED_KM_S_MPC, KELVIN_PER_MEV, NEWTON_G_CGS } from "../constants/units.ts";
 import { InputError } from "../numerics/check.ts";
 import { gaussLegendre } from "../numerics/quadrature.ts";
-import { logMassiveDensityRatio } from "./massive-neutrino.ts";
+import { tabulatedDensityRatio } from "./massive-neutrino.ts";
 
 /**
  * Friedmann equation of a flat Universe, H = sqrt(8 pi G rho/3).
@@ -46,8 +46,8 @@ export interface LateBackground {
   conformalRate(a: number): number;
   /** H [1/s]. @param z redshift, > -1 */
   hubble(z: number): number;
-  /** Writes [H in 1/s, d ln H/d ln a] at ln a. */
-  hubbleAndSlope(logA: number, out: Float64Array): void;
+  /** Writes [H in 1/s, d ln H/d ln a] at ln a; the scale factor may be given where it is known. */
+  hubbleAndSlope(logA: number, out: Float64Array, a?: number): void;
 }
 
 /**
@@ -104,9 +104,9 @@ export function lateBackground(cosmology: LateCosmology, newtonG: number = NEWTO
   // ln(m c^2/k T_nu) today; the massive third enters as I(y a).
   const logY0 = massive ? Math.log((sumMnu * 1e-6 * KELVIN_PER_MEV) / neutrinoTemperature(tCmb, nEff)) : 0;
   const ratio = new Float64Array(2);
-  if (massive) logMassiveDensityRatio(logY0, ratio);
+  if (massive) tabulatedDensityRatio(logY0, ratio);
   const third = massive ? omegaNuMassless / 3 : 0;
-  const omegaNuMassive = massive ? third * Math.exp(ratio[0]) : 0;
+  const omegaNuMassive = massive ? third * ratio[0] : 0;
   const relativistic = omegaGamma + omegaNuMassless - third;
   const omegaCb = omegaB + omegaC;
   const omegaM = omegaCb + omegaNuMassive;
@@ -125,10 +125,9 @@ export function lateBackground(cosmology: LateCosmology, newtonG: number = NEWTO
     let sum = relativistic + matter + lambda;
     let derivative = matter + 4 * lambda;
     if (massive) {
-      logMassiveDensityRatio(logY0 + logA, ratio);
-      const density = third * Math.exp(ratio[0]);
-      sum += density;
-      derivative += density * ratio[1];
+      tabulatedDensityRatio(logY0 + logA, ratio);
+      sum += third * ratio[0];
+      derivative += third * ratio[1];
     }
     slope[0] = derivative;
     return sum;
@@ -146,8 +145,7 @@ export function lateBackground(cosmology: LateCosmology, newtonG: number = NEWTO
       const a = 1 / (1 + z);
       return (HUNDRED_KM_S_MPC * Math.sqrt(squared(a, Math.log(a)))) / (a * a);
     },
-    hubbleAndSlope(logA, out) {
-      const a = Math.exp(logA);
+    hubbleAndSlope(logA, out, a = Math.exp(logA)) {
       const sum = squared(a, logA);
       out[0] = (HUNDRED_KM_S_MPC * Math.sqrt(sum)) / (a * a);
       out[1] = slope[0] / (2 * sum) - 2;

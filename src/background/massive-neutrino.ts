@@ -1,5 +1,4 @@
 /** Energy density of one massive neutrino eigenstate with a frozen Fermi-Dirac momentum distribution. */
-import { hermite, hermiteDerivative } from "../numerics/interpolate.ts";
 import { gaussLegendre } from "../numerics/quadrature.ts";
 
 /** int x^3/(e^x + 1) dx = 7 pi^4/120. */
@@ -56,45 +55,49 @@ const LOG_MAX = Math.log(1e5);
 const INTERVALS = 1000;
 const STEP = (LOG_MAX - LOG_MIN) / INTERVALS;
 
-let table: { readonly logRatio: Float64Array; readonly slope: Float64Array } | undefined;
+let table: { readonly ratio: Float64Array; readonly slope: Float64Array } | undefined;
 
 function ratioTable() {
   if (table) return table;
-  const logRatio = new Float64Array(INTERVALS + 1);
+  const ratio = new Float64Array(INTERVALS + 1);
   const slope = new Float64Array(INTERVALS + 1);
   for (let i = 0; i <= INTERVALS; i++) {
     const y = Math.exp(LOG_MIN + i * STEP);
-    const ratio = massiveDensityRatio(y);
-    logRatio[i] = Math.log(ratio);
-    slope[i] = ratioSlope(y) / ratio;
+    ratio[i] = massiveDensityRatio(y);
+    slope[i] = ratioSlope(y);
   }
-  table = { logRatio, slope };
+  table = { ratio, slope };
   return table;
 }
 
 /**
- * ln I(y) and its derivative d ln I/d ln y from a table of {@link massiveDensityRatio}, cubic Hermite in ln y;
- * series beyond its ends: 1 + 5 y^2/(7 pi^2) for y < 1e-3 and the non-relativistic limit for y > 1e5.
+ * I(y) and its derivative dI/d ln y from a table of {@link massiveDensityRatio}, cubic Hermite in ln y; series beyond
+ * its ends: 1 + 5 y^2/(7 pi^2) for y < 1e-3 and the non-relativistic limit for y > 1e5.
  *
  * @param logY ln(m c^2/(k T_nu)), any finite value
- * @param out  receives [ln I, d ln I/d ln y]; relative accuracy 2e-10 in I
+ * @param out  receives [I, dI/d ln y]; relative accuracy 3e-10
  */
-export function logMassiveDensityRatio(logY: number, out: Float64Array): void {
+export function tabulatedDensityRatio(logY: number, out: Float64Array): void {
   if (logY < LOG_MIN) {
     const small = ((5 / 7) * Math.exp(2 * logY)) / Math.PI ** 2;
-    out[0] = small;
+    out[0] = 1 + small;
     out[1] = 2 * small;
     return;
   }
   if (logY > LOG_MAX) {
-    out[0] = Math.log(NUMBER / MASSLESS) + logY;
-    out[1] = 1;
+    out[0] = (NUMBER / MASSLESS) * Math.exp(logY);
+    out[1] = out[0];
     return;
   }
-  const { logRatio, slope } = ratioTable();
+  const { ratio, slope } = table ?? ratioTable();
   const position = (logY - LOG_MIN) / STEP;
   const i = Math.min(INTERVALS - 1, Math.floor(position));
   const u = position - i;
-  out[0] = hermite(u, STEP, logRatio[i], slope[i], logRatio[i + 1], slope[i + 1]);
-  out[1] = hermiteDerivative(u, STEP, logRatio[i], slope[i], logRatio[i + 1], slope[i + 1]);
+  const y0 = ratio[i];
+  const d = ratio[i + 1] - y0;
+  const a = STEP * slope[i] - d;
+  const b = d - STEP * slope[i + 1];
+  // The Hermite piece of numerics/interpolate.ts, written out: this is read in every evaluation of H.
+  out[0] = y0 + u * d + u * (1 - u) * (a * (1 - u) + b * u);
+  out[1] = (d + a * (1 - u) * (1 - 3 * u) + b * u * (2 - 3 * u)) / STEP;
 }

@@ -35,7 +35,7 @@ export interface LineOfSight {
   unitDepth(which: "optical" | "drag"): number;
 }
 
-const POINTS = 4;
+const POINTS = 3;
 /** Widest panels in ln(1 + z), below and above the highest redshift of the tables. */
 const WIDEST = 0.1;
 const WIDEST_ABOVE = 0.35;
@@ -50,8 +50,9 @@ export function thomsonPerElectron(history: IonisationHistory): (logZ: number) =
   const scale = thomsonScale(history);
   const expansion = new Float64Array(2);
   return (logZ) => {
-    history.background.hubbleAndSlope(-logZ, expansion);
-    return (scale * Math.exp(3 * logZ)) / expansion[0];
+    const onePlusZ = Math.exp(logZ);
+    history.background.hubbleAndSlope(-logZ, expansion, 1 / onePlusZ);
+    return (scale * onePlusZ * onePlusZ * onePlusZ) / expansion[0];
   };
 }
 
@@ -123,7 +124,7 @@ export function lineOfSight(history: IonisationHistory, zRe?: number): LineOfSig
       const x = middle + half * nodes[k];
       const w = weights[k] * half;
       const onePlusZ = Math.exp(x);
-      background.hubbleAndSlope(-x, expansion);
+      background.hubbleAndSlope(-x, expansion, 1 / onePlusZ);
       const thomson = (scale * onePlusZ * onePlusZ * onePlusZ) / expansion[0];
       const xe = history.xeAt(x, interval);
       const R = R0 / onePlusZ;

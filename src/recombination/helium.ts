@@ -28,10 +28,11 @@ export interface HeliumChannel {
   readonly rate: number;
   /** tau = this n_H x_HeI/H: 3 A lambda^3/(8 pi) [cm^3/s]. */
   readonly depth: number;
-  /** gamma = this x_HeI/(x_1s sqrt(T_m)). */
-  readonly opacity: number;
-  /** Fit of the escape by continuum absorption; absorb false: none. */
-  readonly a: number;
+  /**
+   * Escape by continuum absorption, 1/(1 + a gamma^b), gamma = opacity y_I/(x_1s sqrt(T_m)): ln(a opacity^b) and b;
+   * absorb false: none.
+   */
+  readonly lnAbsorption: number;
   readonly b: number;
   readonly absorb: boolean;
   /** Two-photon decay of the metastable level [1/s]. */
@@ -62,13 +63,16 @@ export function heliumCoefficients(
     T1: 10 ** values.he1AlphaLogT1,
     T2: values.he1AlphaT2,
   });
-  const line = (A: number, wavenumber: number) => {
+  const line = (A: number, wavenumber: number, a: number, b: number) => {
     const sigma = hydrogenPhotoionisation(wavenumber / values.hIonisation, values.hPhotoionisation);
     // Doppler width at 1 K, nu sqrt(2 k/(m c^2)) [1/s].
     const width = wavenumber * Math.sqrt((2 * BOLTZMANN.value) / heliumMass);
+    const opacity = ((3 * A) / (8 * Math.PI ** 1.5 * wavenumber ** 2 * sigma * width)) * fHe;
     return {
       depth: (3 * A * CM3_PER_M3) / (8 * Math.PI * wavenumber ** 3),
-      opacity: ((3 * A) / (8 * Math.PI ** 1.5 * wavenumber ** 2 * sigma * width)) * fHe,
+      lnAbsorption: Math.log(a) + b * Math.log(opacity),
+      b,
+      absorb,
     };
   };
   const ionisation = termTemperature(values.he1Ionisation);
@@ -86,10 +90,7 @@ export function heliumCoefficients(
       fromMetastable: ionisation - singletS,
       raise: termTemperature(values.he1SingletP) - singletS,
       rate: 3 * values.he1SingletA,
-      ...line(values.he1SingletA, values.he1SingletP),
-      a: values.he1EscapeSingletA,
-      b: values.he1EscapeSingletB,
-      absorb,
+      ...line(values.he1SingletA, values.he1SingletP, values.he1EscapeSingletA, values.he1EscapeSingletB),
       twoPhoton: without.includes("helium-two-photon") ? 0 : values.he1TwoPhoton,
     },
     triplet: {
@@ -98,10 +99,7 @@ export function heliumCoefficients(
       fromMetastable: ionisation - tripletS,
       raise: termTemperature(values.he1TripletP) - tripletS,
       rate: values.he1TripletA,
-      ...line(values.he1TripletA, values.he1TripletP),
-      a: values.he1EscapeTripletA,
-      b: values.he1EscapeTripletB,
-      absorb,
+      ...line(values.he1TripletA, values.he1TripletP, values.he1EscapeTripletA, values.he1EscapeTripletB),
       twoPhoton: 0,
     },
   };
@@ -143,6 +141,7 @@ function channelRate(
   s2: number,
   ln1: number,
   ln2: number,
+  lnShare: number,
   partials: boolean,
   out: ChannelRate,
 ): void {
@@ -157,9 +156,9 @@ function channelRate(
     return;
   }
   const tau = (c.depth * nH * k.fHe * s.neutralHe) / H;
-  const sobolev = tau > 1e-8 ? -Math.expm1(-tau) / tau : 1 - tau / 2;
-  const gamma = (c.opacity * s.neutralHe) / (s.neutralH * Math.sqrt(Tm));
-  const continuum = !c.absorb ? 0 : gamma > 0 ? 1 / (1 + c.a * Math.exp(c.b * Math.log(gamma))) : 1;
+  const passed = Math.exp(-tau);
+  const sobolev = tau > 0.1 ? (1 - passed) / tau : tau > 1e-8 ? -Math.expm1(-tau) / tau : 1 - tau / 2;
+  const continuum = c.absorb ? 1 / (1 + Math.exp(c.lnAbsorption + c.b * lnShare)) : 0;
   const P = sobolev + continuum;
   const x = k.thermal * Tm;
   const back = c.backWeight * alpha * x * Math.sqrt(x);
@@ -172,7 +171,7 @@ function channelRate(
   if (!partials) return;
   // d ln C = (1 - C)(d ln leave - d ln beta)
   const inhibited = out.value * (1 - C);
-  const bySobolev = ((tau > 1e-8 ? Math.exp(-tau) : 1 - tau) - sobolev) * (c.rate / leave) * inhibited;
+  const bySobolev = (passed - sobolev) * (c.rate / leave) * inhibited;
   const byContinuum = -c.b * continuum * (1 - continuum) * (c.rate / leave) * inhibited;
   const betaSlope = alphaSlope + 1.5 + (c.fromMetastable - c.raise) / Tm;
   out.lnNH = bySobolev;
@@ -198,12 +197,13 @@ export function heliumRate(k: HeliumCoefficients, s: PlasmaState, partials: bool
   const { nH, H, xe, Tm, ionisedHe, neutralHe } = s;
   const s1 = Math.sqrt(Tm / k.singlet.fit.T1);
   const s2 = Math.sqrt(Tm / k.singlet.fit.T2);
-  const ln1 = Math.log1p(s1);
-  const ln2 = Math.log1p(s2);
-  channelRate(k.singlet, k, s, s1, s2, ln1, ln2, partials, singlet);
+  const ln1 = Math.log(1 + s1);
+  const ln2 = Math.log(1 + s2);
+  const lnShare = Math.log(s.neutralHe / (s.neutralH * Math.sqrt(Tm)));
+  channelRate(k.singlet, k, s, s1, s2, ln1, ln2, lnShare, partials, singlet);
   let A = singlet.value;
   if (k.useTriplet) {
-    channelRate(k.triplet, k, s, s1, s2, ln1, ln2, partials, triplet);
+    channelRate(k.triplet, k, s, s1, s2, ln1, ln2, lnShare, partials, triplet);
     A += triplet.value;
   }
   const x = k.thermal * Tm;

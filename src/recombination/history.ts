@@ -20,7 +20,7 @@ const Z_FULL = 2e4;
 /** Departure of x_e from equilibrium (relative) below which the equations are not yet integrated. */
 const EQUILIBRIUM_LAG = 1e-10;
 
-/** Largest tolerance of a logit that does not yet move x_e, unless the tolerance itself is larger. */
+/** Largest tolerance of a component that hardly moves x_e, unless the tolerance itself is larger. */
 const LOOSEST = 1e-3;
 
 /** Ionised share of helium at which its equation ends and its electrons count as none. */
@@ -133,6 +133,7 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
   function collect(system: StiffSystem, y0: Float64Array, zStart: number, full?: RecombinationSystem) {
     const tolerance = inputs.tolerance ?? RECOMBINATION_TOLERANCE;
     const atol = new Float64Array(system.n).fill(tolerance);
+    if (full) atol[Y.cooling] = Math.min(10 * tolerance, Math.max(tolerance, LOOSEST));
     const widest = Math.min(1e3, Math.max(1, LOOSEST / tolerance));
     const start = -Math.log1p(zStart);
     const stepper = new StiffStepper(system, start, y0, 0, {
@@ -167,7 +168,7 @@ export function computeIonisationHistory(inputs: RecombinationInputs): Ionisatio
     keep();
     while (!stepper.done) {
       stepper.step();
-      if (full?.heliumActive && stepper.y[Y.helium] < Math.log(HELIUM_END)) full.heliumActive = false;
+      if (full?.heliumActive && stepper.y[Y.helium] < Math.log(HELIUM_END)) full.endHelium();
       keep();
     }
     return {

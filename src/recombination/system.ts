@@ -23,8 +23,9 @@ export interface SystemInputs {
 }
 
 export interface RecombinationSystem extends StiffSystem {
-  /** False once helium is neutral for good: its equation is left out and its electrons count as none. */
-  heliumActive: boolean;
+  /** Leaves out the equation of helium once it is neutral for good; its electrons count as none from then on. */
+  endHelium(): void;
+  readonly heliumActive: boolean;
   readonly fHe: number;
   /** Fills the plasma state that belongs to y at ln a. */
   fill(logA: number, y: Float64Array): PlasmaState;
@@ -48,10 +49,19 @@ export function recombinationSystem(inputs: SystemInputs): RecombinationSystem {
   let xeBySaha = 0;
   let sahaSlope = 0;
   let gammaOverH = 0;
+  let heliumActive = true;
+
+  // The state last filled in: the stepper asks for the derivatives where it has just asked for the right-hand side.
+  const filled = Float64Array.of(Number.NaN, 0, 0, 0);
 
   function fill(logA: number, y: Float64Array): PlasmaState {
-    background.hubbleAndSlope(logA, expansion);
+    if (logA === filled[0] && y[0] === filled[1] && y[1] === filled[2] && y[2] === filled[3]) return s;
+    filled[0] = logA;
+    filled[1] = y[0];
+    filled[2] = y[1];
+    filled[3] = y[2];
     const inverseA = Math.exp(-logA);
+    background.hubbleAndSlope(logA, expansion, 1 / inverseA);
     const Tr = T0 * inverseA;
     const nH = nH0 * inverseA * inverseA * inverseA;
     const H = expansion[0];
@@ -59,7 +69,7 @@ export function recombinationSystem(inputs: SystemInputs): RecombinationSystem {
     const major = 1 / (1 + eH);
     const xp = y[0] > 0 ? major : eH * major;
     s.neutralH = y[0] > 0 ? eH * major : major;
-    if (system.heliumActive) {
+    if (heliumActive) {
       const eHe = Math.exp(-Math.abs(y[1]));
       const majorHe = 1 / (1 + eHe);
       s.ionisedHe = y[1] > 0 ? majorHe : eHe * majorHe;
@@ -115,7 +125,7 @@ export function recombinationSystem(inputs: SystemInputs): RecombinationSystem {
     fill(logA, y);
     hydrogenRate(hydrogen, s, false, rateH);
     dydt[0] = rateH[0];
-    if (system.heliumActive) {
+    if (heliumActive) {
       heliumRate(helium, s, false, rateHe);
       dydt[1] = rateHe[0];
     } else dydt[1] = 0;
@@ -140,7 +150,7 @@ export function recombinationSystem(inputs: SystemInputs): RecombinationSystem {
     fill(logA, y);
     hydrogenRate(hydrogen, s, true, rateH);
     row(rateH, 0, y[2], dfdt);
-    if (system.heliumActive) {
+    if (heliumActive) {
       heliumRate(helium, s, true, rateHe);
       row(rateHe, 1, y[2], dfdt);
     } else {
@@ -162,7 +172,13 @@ export function recombinationSystem(inputs: SystemInputs): RecombinationSystem {
 
   const system: RecombinationSystem = {
     n: 3,
-    heliumActive: true,
+    get heliumActive() {
+      return heliumActive;
+    },
+    endHelium() {
+      heliumActive = false;
+      filled[0] = Number.NaN;
+    },
     fHe,
     rhs,
     timeDerivative,
