@@ -5,6 +5,7 @@ import { printNotice, printResult } from "../node/print.ts";
 import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { EmberlineError, InputError } from "../numerics/check.ts";
 import { VERSION } from "../version.ts";
+import { inferOptions } from "./infer-options.ts";
 import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
 import { addRatesCommands, RATES, spellRates } from "./rates-commands.ts";
 import { recombinationOptions } from "./recombination-options.ts";
@@ -53,6 +54,19 @@ const COMMANDS: readonly CommandSpec[] = [
     options: () => [...nucleosynthesisOptions(), ...outputOptions(["helium", "deuterium", "helium3", "lithium"])],
     example: "emberline budget --chart budget.png",
     load: () => import("./commands/budget.ts"),
+  },
+  {
+    name: "infer",
+    summary: "baryon density, N_eff and more from observed abundances",
+    options: () => [
+      ...inferOptions(),
+      ...nucleosynthesisOptions(),
+      ...errorOptions().filter((option) => option.long === "--seed"),
+      ...outputOptions(["elements", "contours", "posterior"]),
+      ...resumeOptions(),
+    ],
+    example: "emberline infer --observed D/H=2.527e-5±0.030e-5,Yp=0.245±0.003 --free omegaB,nEff --chart infer.png",
+    load: () => import("./commands/infer.ts"),
   },
   {
     name: "recombination",
