@@ -131,7 +131,7 @@ export function computeThermalHistory(options: Partial<BackgroundOptions> = {}):
   let miss = exact ? 0 : Number.POSITIVE_INFINITY;
   for (let done = false; !done; ) {
     const writing = miss < NEARLY_DARK;
-    const end = integrate(o, lnHeating, s, writing ? write : undefined);
+    const end = explained(() => integrate(o, lnHeating, s, writing ? write : undefined));
     miss = Math.abs(end.lnHeating - lnHeating);
     lnHeating = end.lnHeating;
     total.steps += end.steps;
@@ -168,6 +168,19 @@ export function assembleHistory(s: Float64Array, c: HistoryColumns, counts: Ther
     counts,
     ...interpolation(s, { ...c, nue: c.TnueOverT, numu: c.TnumuOverT }),
   };
+}
+
+/** Says in words of this integration why it failed: expansion so slow or fast that the equations cannot be followed. */
+function explained<T>(run: () => T): T {
+  try {
+    return run();
+  } catch (error) {
+    if (!(error instanceof CalculationError)) throw error;
+    throw new CalculationError(
+      "background",
+      `thermal history: ${error.message} (x = -ln T9); a factor on H far below 1e-3 or above 1e6 is out of its reach`,
+    );
+  }
 }
 
 /** Receives the state at output point i; y and scratch are valid during the call only. */
