@@ -37,7 +37,8 @@ export function ionisationChart(results: RecombinationResults, model: string, he
   const xe = numericColumn(table, "xe");
   // Reionisation shows at its own redshifts.
   const x = { ...SHOWN, min: results.zReionisation === undefined ? SHOWN.min : 2 };
-  const y = { min: 1e-5, max: 2 };
+  const full = 1 + 2 * fHe;
+  const y = { min: 1e-5, max: Math.max(2, 1.5 * full) };
   const tCmb = numericColumn(table, "Tr_K")[0] / (1 + z[0]);
   const saha = Array.from({ length: SAHA_POINTS }, (_, i) => {
     const at = x.min * (x.max / x.min) ** (i / (SAHA_POINTS - 1));
@@ -66,7 +67,6 @@ export function ionisationChart(results: RecombinationResults, model: string, he
       axis,
     },
   ];
-  const full = 1 + 2 * fHe;
   const helium = { min: 0.98, max: full + 0.02 * Math.max(1, fHe) };
   const share = (weight: number) => ((height - MARGINS.vertical) * weight) / (WEIGHTS.y + WEIGHTS.yHelium);
   const hydrogen = curve("y");
