@@ -57,18 +57,17 @@ export function listErrorSources(context: RunContext, p: CosmologyParameters): E
   ];
 }
 
-function sensitivitySteps(p: CosmologyParameters): CentralStep[] {
-  const s = SENSITIVITY_STEPS;
-  const up = Math.min(p.deltaNEff + s.nEff, RANGES.deltaNEff.max);
-  const down = Math.max(p.deltaNEff - s.nEff, RANGES.deltaNEff.min);
-  return [{ name: "nEff", up, down, lnDistance: (up - down) / SPECIES }, relativeStep("G", 1, s.G)];
+function historySteps(p: CosmologyParameters): CentralStep<"nEff" | "G">[] {
+  const up = Math.min(p.deltaNEff + SENSITIVITY_STEPS.nEff, RANGES.deltaNEff.max);
+  const down = Math.max(p.deltaNEff - SENSITIVITY_STEPS.nEff, RANGES.deltaNEff.min);
+  return [{ name: "nEff", up, down, lnDistance: (up - down) / SPECIES }, relativeStep("G", 1, SENSITIVITY_STEPS.G)];
 }
 
 /**
- * Error budget by linear propagation. Sensitivities d ln X/d ln p: omega_b (as eta), tau_n, each rate in both
- * directions at all T (n_p too) from the adjoint of one run; G (at fixed eta, +-2 %) and N_eff (+-0.06, as
- * 3 d ln X/d(deltaNEff)) by central differences. Variances by the response to one standard deviation of each source,
- * f_u(T9)^p for rates: the derivative at p = 0, or p = +-1 where f_u is large.
+ * Error budget by linear propagation. Sensitivities d ln X/d ln p: omega_b (as eta), tau_n and each rate (in both
+ * directions at all T, n_p too) by the adjoint of one run; those that need another thermal history by central
+ * differences: G (at fixed eta) +-2 %, N_eff +-0.06 as 3 d ln X/d(deltaNEff). Variances by the response to one standard
+ * deviation of each source, f_u(T9)^p for rates; see {@link linearErrors}.
  * @param progress told how many of the runs are done
  * @throws {InputError | CalculationError}
  */
@@ -80,71 +79,58 @@ export function computeErrorBudget(
   const context = model.context(p);
   const factors = scaleFactors(context.data, p.scales, model.library);
   const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
-  const steps = sensitivitySteps(p);
-  const sources = errorSources(context, p);
-  let counts: SolverCounts | undefined;
-  const run = (where: RunContext, how: RunInputs) => {
-    const { names, values, counts: spent } = model.evaluate(where, how);
-    counts = counts ? addCounts(counts, spent) : spent;
-    return { names, values };
-  };
-
-  const central = run(context, inputs);
-  const kept = central.names.flatMap((_, i) => (central.values[i] > 0 ? [i] : []));
-  const names = kept.map((i) => central.names[i]);
-  const values = kept.map((i) => central.values[i]);
-  const at = (where: RunContext, how: RunInputs) => {
-    const all = run(where, how).values;
-    return kept.map((i) => all[i]);
-  };
-
-  const reactionIndex = new Map([WEAK_REACTION, ...context.data.reactions.map((r) => r.id)].map((id, i) => [id, i]));
+  const central = model.evaluate(context, inputs);
+  let { counts } = central;
   const linear = linearErrors(
     context,
     inputs,
     p,
-    values,
-    (Y) => {
-      const all = reported(context, Y);
-      return kept.map((i) => all[i]);
-    },
+    central.values,
+    (Y) => reported(context, Y),
     (s, sign) => {
-      const variations = new Float64Array(sources);
+      const variations = new Float64Array(errorSources(context, p));
       variations[s] = sign;
-      const { values: all, counts: spent } = model.evaluate(context, applyVariations(context, inputs, p, variations));
-      return { values: kept.map((i) => all[i]), counts: spent };
+      return model.evaluate(context, applyVariations(context, inputs, p, variations));
     },
     progress,
   );
-  counts = addCounts(counts as SolverCounts, linear.counts);
-  const { responses } = linear;
-  // The background depends on N_eff and G: differences; all else are derivatives of the one run.
-  const slopes = centralSensitivities(steps, (name, value) => {
-    if (name === "nEff") return at(model.context({ ...p, deltaNEff: value }), inputs);
-    return at(model.context(p, value), inputs);
+  counts = addCounts(counts, linear.counts);
+  const [byNEff, byG] = centralSensitivities(historySteps(p), (name, value) => {
+    const other = name === "G" ? model.context(p, value) : model.context({ ...p, deltaNEff: value });
+    const run = model.evaluate(other, inputs);
+    counts = addCounts(counts, run.counts);
+    return run.values;
   });
-  const sensitivity = (name: string, x: number) => {
-    if (name === "omegaB") return responses.lnEta[x];
-    if (name === "tauN") return responses.lnTau[x];
-    const k = steps.findIndex((step) => step.name === name);
-    return k >= 0 ? slopes[k][x] : responses.lnRate[x][reactionIndex.get(name) as number];
-  };
-  const sensitivityNames = ["omegaB", "tauN", "nEff", "G", ...reactionIndex.keys()];
 
+  const { lnEta, lnTau, lnRate } = linear.responses;
+  const rates = [WEAK_REACTION, ...context.data.reactions.map((r) => r.id)];
+  const sensitivities = (x: number) => ({
+    omegaB: lnEta[x],
+    tauN: lnTau[x],
+    nEff: byNEff[x],
+    G: byG[x],
+    ...Object.fromEntries(rates.map((id, r) => [id, lnRate[x][r]])),
+  });
+  const X = central.names.length;
   const list = listErrorSources(context, p);
+  const shares = (x: number) => {
+    const whole = linear.covariance[x * X + x];
+    return Object.fromEntries(list.map(({ name }, s) => [name, whole > 0 ? linear.response[s][x] ** 2 / whole : 0]));
+  };
+  const kept = central.names.flatMap((_, x) => (central.values[x] > 0 ? [x] : []));
   const byName = <T>(value: (x: number) => T): Record<string, T> =>
-    Object.fromEntries(names.map((name, x) => [name, value(x)]));
+    Object.fromEntries(kept.map((x) => [central.names[x], value(x)]));
   return {
-    abundances: byName((x) => ({ value: values[x], sigma: linear.sigma[x] })),
-    sensitivities: byName((x) => Object.fromEntries(sensitivityNames.map((name) => [name, sensitivity(name, x)]))),
-    variance: byName((x) => {
-      const whole = linear.covariance[x * names.length + x];
-      return Object.fromEntries(list.map(({ name }, s) => [name, whole > 0 ? linear.response[s][x] ** 2 / whole : 0]));
-    }),
-    correlation: { order: names, matrix: linear.correlation },
+    abundances: byName((x) => ({ value: central.values[x], sigma: linear.sigma[x] })),
+    sensitivities: byName(sensitivities),
+    variance: byName(shares),
+    correlation: {
+      order: kept.map((x) => central.names[x]),
+      matrix: kept.map((x) => kept.map((y) => linear.correlation[x][y])),
+    },
     sources: list,
     nEffComputed: context.history.nEffComputed,
-    counts: counts as SolverCounts,
+    counts,
   };
 }
 

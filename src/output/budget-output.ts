@@ -110,8 +110,8 @@ function sensitivityLines(results: BudgetResults): string[] {
     ),
     ...(hidden > 0 ? [`  ${hidden} further rates: all below ${LEAST_SENSITIVITY}`] : []),
     ...wrap(
-      "omega_b, tau_n and G (at fixed eta) by central differences of 2\u00a0%, rates of 5\u00a0% in both directions at all " +
-        "temperatures, N_eff as 3 d ln X/d(delta-n).",
+      "omega_b (as eta), tau_n and each rate (both directions, all temperatures) by the adjoint of one run; G (at fixed " +
+        "eta) by a central difference of 2\u00a0%, N_eff as 3 d ln X/d(delta-n).",
       "  ",
     ),
   ];
