@@ -9,7 +9,8 @@ import { inferOptions } from "./infer-options.ts";
 import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
 import { addRatesCommands, RATES, spellRates } from "./rates-commands.ts";
 import { recombinationOptions } from "./recombination-options.ts";
-import { overOptions, resumeOptions } from "./sweep-options.ts";
+import { SWEEP_COMMANDS } from "./sweep-commands.ts";
+import { resumeOptions } from "./sweep-options.ts";
 
 /** One command: its help, its options, and the module that does it. */
 interface CommandSpec {
@@ -35,19 +36,7 @@ const COMMANDS: readonly CommandSpec[] = [
     example: "emberline history --network twelve --chart history.svg --out history.txt",
     load: () => import("./commands/history.ts"),
   },
-  {
-    name: "scan",
-    summary: "abundances along one or two parameters: the diagram against the baryon density and its relatives",
-    options: () => [
-      ...overOptions(),
-      ...nucleosynthesisOptions(),
-      ...errorOptions(),
-      ...outputOptions(["helium", "deuterium", "lithium"]),
-      ...resumeOptions(),
-    ],
-    example: "emberline scan --over eta10=1:10:100log --chart diagram.svg --format csv --out scan.csv",
-    load: () => import("./commands/scan.ts"),
-  },
+  ...SWEEP_COMMANDS,
   {
     name: "budget",
     summary: "where each abundance's error comes from, and its sensitivity to every parameter and rate",

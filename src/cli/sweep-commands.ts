@@ -2,7 +2,7 @@
 import type { Option } from "commander";
 import { SCAN_CHARTS } from "../charts/scan-look.ts";
 import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
-import { batchOptions, overOptions, resumeOptions } from "./sweep-options.ts";
+import { batchOptions, gridOptions, overOptions, resumeOptions } from "./sweep-options.ts";
 
 interface SweepCommand {
   readonly name: string;
@@ -25,6 +25,21 @@ export const SWEEP_COMMANDS: readonly SweepCommand[] = [
     ],
     example: "emberline scan --over eta10=1:10:100log --chart diagram.svg --format csv --out scan.csv",
     load: () => import("./commands/scan.ts"),
+  },
+  {
+    name: "grid",
+    summary: "abundances on two or more axes for further analysis, whole or in parts on many machines",
+    options: () => [
+      ...overOptions(),
+      ...gridOptions(),
+      ...nucleosynthesisOptions(),
+      ...errorOptions(),
+      ...outputOptions(),
+      ...resumeOptions(),
+    ],
+    example:
+      "emberline grid --over omegaB=0.018:0.027:40 --over deltaNEff=-2:2:20 --errors none --check --format ecsv --out grid.ecsv",
+    load: () => import("./commands/grid.ts"),
   },
   {
     name: "batch",

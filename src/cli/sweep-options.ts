@@ -12,6 +12,18 @@ export function overOptions(): Option[] {
   ];
 }
 
+/** Parts of a grid, and what is measured of it. */
+export function gridOptions(): Option[] {
+  return [
+    new Option("--part <k/n>", "compute only the k-th of n parts, to be joined with --join; csv or ecsv"),
+    new Option(
+      "--join <files...>",
+      "join the files of all parts to what a single run writes, and check that they belong together",
+    ),
+    new Option("--check", "measure the error of interpolating the grid, at random points between its own"),
+  ];
+}
+
 /** Going on from the checkpoint of a run that was interrupted. */
 export function resumeOptions(): Option[] {
   return [new Option("--resume", "go on from where an interrupted run with the same --out stopped, if there is one")];

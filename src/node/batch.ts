@@ -39,12 +39,13 @@ export async function runBatch(
   let closed = false;
   let failure: unknown;
   let changed = () => {};
+  let giveUp = () => {};
   const ended = new AbortController();
-  const over = new Promise<undefined>((resolve) => ended.signal.addEventListener("abort", () => resolve(undefined)));
   const stop = () => {
     ended.abort();
     input.destroy();
     changed();
+    giveUp();
   };
   signal.addEventListener("abort", stop, { once: true });
   const onError = (error: NodeJS.ErrnoException) => {
@@ -68,7 +69,11 @@ export async function runBatch(
         await change();
         continue;
       }
-      const text = await Promise.race([head, over]);
+      // No Promise.race with a promise that lives as long as the batch: it would keep every answer.
+      const text = await new Promise<string | undefined>((resolve, reject) => {
+        giveUp = () => resolve(undefined);
+        head.then(resolve, reject);
+      });
       if (text === undefined || ended.signal.aborted) return;
       held -= text.length;
       if (!output.write(`${text}\n`)) await drained(output, ended.signal);

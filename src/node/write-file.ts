@@ -1,6 +1,6 @@
 /** Writes a file whole or not at all: a temporary file in the same folder, synchronised, then renamed. */
 import { constants } from "node:fs";
-import { access, open, realpath, rename, stat, unlink } from "node:fs/promises";
+import { access, open, realpath, rename, stat, unlink, writeFile } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
 import { InputError } from "../numerics/check.ts";
 
@@ -48,7 +48,7 @@ export async function requireWritable(path: string): Promise<void> {
  * Writes the whole content or leaves what was there. A device or pipe is written directly; a link keeps pointing.
  * @throws {InputError} if the file cannot be written; no temporary file remains
  */
-export async function writeWhole(path: string, content: string | Uint8Array): Promise<void> {
+export async function writeWhole(path: string, content: string | Uint8Array | AsyncIterable<string>): Promise<void> {
   await requireWritable(path);
   const existing = await stat(path).catch(() => undefined);
   const direct = existing !== undefined && !existing.isFile();
@@ -59,7 +59,7 @@ export async function writeWhole(path: string, content: string | Uint8Array): Pr
     const file = await open(target, direct ? "w" : "wx", existing?.isFile() ? existing.mode & 0o777 : 0o666);
     created = !direct;
     try {
-      await file.writeFile(content);
+      await writeFile(file, content);
       if (!direct) await file.sync();
     } finally {
       await file.close();

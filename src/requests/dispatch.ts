@@ -8,7 +8,9 @@ import { abundancesOf } from "./abundances.ts";
 import { computeBudget } from "./budget.ts";
 import { checkKeys } from "./check-keys.ts";
 import type { Envelope } from "./envelope.ts";
+import { computeGrid } from "./grid.ts";
 import { computeHistory } from "./history.ts";
+import { computeInfer } from "./infer.ts";
 import type { ModelCache } from "./model-cache.ts";
 import { computeRecombination } from "./recombination.ts";
 import { computeScan } from "./scan.ts";
@@ -34,7 +36,9 @@ const ANSWERERS: Readonly<Record<string, Answerer>> = {
   },
   history: (keys, { library }) => computeHistory(keys, library),
   scan: (keys, { library, answerPoint }) => computeScan(keys, library, { engine: singleThread(answerPoint) }),
+  grid: (keys, { library, answerPoint }) => computeGrid(keys, library, { engine: singleThread(answerPoint) }),
   budget: (keys, { library }) => computeBudget(keys, library),
+  infer: (keys, { library, answerPoint }) => computeInfer(keys, library, { engine: singleThread(answerPoint) }),
   recombination: (keys, { library }) => computeRecombination(keys, library),
 };
 

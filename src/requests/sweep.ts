@@ -149,9 +149,8 @@ export async function runSweep(sweep: PreparedSweep, progress?: Progress): Promi
     points.map((point) => ({ point, values: true, ...(sampled ? { sigma: true } : {}) })),
     "points",
   );
-  answers.forEach((answer, i) => {
-    warnings.add(answer.warnings, placeOf(plan, points[i]));
-  });
+  const inOrder = points.map((point, i) => ({ point, i })).sort((a, b) => a.point - b.point);
+  for (const { point, i } of inOrder) warnings.add(answers[i].warnings, placeOf(plan, point));
   const relative =
     parameters.errors === "linear"
       ? await relativeErrors(plan, first, end, sweep.sources, names.length, (questions, what) =>
@@ -179,26 +178,30 @@ export async function runSweep(sweep: PreparedSweep, progress?: Progress): Promi
   return {
     table: { columns, units: columns.map((_, i) => plan.axes[i]?.unit ?? "1"), rows },
     counts,
-    warnings: [...axisWarnings(plan), ...warnings.lines(end - first)],
+    warnings: [...axisWarnings(plan), ...warnings.lines()],
   };
 }
 
 /** Warnings of many points: those that differ only in their numbers become one, with the first place. */
 class WarningCollector {
-  readonly #kinds = new Map<string, { text: string; where: string; times: number }>();
+  readonly #kinds = new Map<string, string>();
 
   add(warnings: readonly string[], where: string): void {
     for (const text of warnings) {
-      const kind = text.replace(/[0-9.e+-]+/g, "#");
-      const known = this.#kinds.get(kind);
-      if (known === undefined) this.#kinds.set(kind, { text, where, times: 1 });
-      else known.times++;
+      const kind = warningKind(text);
+      if (!this.#kinds.has(kind)) this.#kinds.set(kind, `${text}${PLACE}${where})`);
     }
   }
 
-  lines(points: number): string[] {
-    return [...this.#kinds.values()].map(({ text, where, times }) =>
-      times === points ? text : `${text} (at ${times} of ${points} points, first at ${where})`,
-    );
+  lines(): string[] {
+    return [...this.#kinds.values()];
   }
+}
+
+/** What stands between a warning and the first point it holds for. */
+const PLACE = " (first at ";
+
+/** A warning without its numbers and place. */
+export function warningKind(text: string): string {
+  return text.split(PLACE)[0].replace(/[0-9.e+-]+/g, "#");
 }

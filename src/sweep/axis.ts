@@ -95,13 +95,14 @@ function axisValues(text: string, fail: Fail): { values: number[]; log: boolean 
   return { values: spread(start, stop, count, log), log };
 }
 
-/** Evenly spread values with exact ends: in the value, or in its logarithm. */
+/** Evenly spread values with exact ends, in the value or in its logarithm, to 15 digits so that 0.021 is 0.021. */
 function spread(start: number, stop: number, count: number, log: boolean): number[] {
   const last = count - 1;
   const at = (i: number) => {
     if (i === 0) return start;
     if (i === last) return stop;
-    return log ? start * (stop / start) ** (i / last) : start + ((stop - start) * i) / last;
+    const value = log ? start * (stop / start) ** (i / last) : start + ((stop - start) * i) / last;
+    return Number(value.toPrecision(15));
   };
   return Array.from({ length: count }, (_, i) => at(i));
 }

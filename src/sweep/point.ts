@@ -1,5 +1,13 @@
 /** One point of a scan or grid: the abundances, and how they respond to sources of error. */
-import { applyVariations, errorSources, type Model, scaleFactors, validityWarnings } from "../model/prepare.ts";
+import { linearErrors } from "../model/linear-errors.ts";
+import {
+  applyVariations,
+  errorSources,
+  type Model,
+  reported,
+  scaleFactors,
+  validityWarnings,
+} from "../model/prepare.ts";
 import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
 import { addCounts, type RunInputs } from "../nucleosynthesis/run.ts";
 import { CalculationError, InputError } from "../numerics/check.ts";
@@ -17,6 +25,8 @@ export interface PointQuestion {
   readonly sources?: readonly number[];
   /** Differences of the responses: `central` at p = +-1, the definition of the linear error; `forward`, half the cost. */
   readonly differences?: "central" | "forward";
+  /** Whether the responses to all sources are wanted, by the adjoint of one run; instead of `sources`. */
+  readonly linear?: boolean;
   /** Whether the errors are those of the model's own error analysis (samples), one sigma an abundance. */
   readonly sigma?: boolean;
 }
@@ -82,6 +92,27 @@ function answer(model: Model, question: PointQuestion): PointAnswer {
     variations[source] = sign;
     return run(applyVariations(context, inputs, p, variations));
   };
+  if (question.linear === true) {
+    const values = run(inputs);
+    const linear = linearErrors(
+      context,
+      inputs,
+      p,
+      values,
+      (Y) => reported(context, Y),
+      (source, sign) => {
+        const variations = new Float64Array(total);
+        variations[source] = sign;
+        return model.evaluate(context, applyVariations(context, inputs, p, variations));
+      },
+    );
+    return {
+      values,
+      responses: linear.response.map((row) => [...row]),
+      counts: addCounts(counts, linear.counts),
+      warnings: validityWarnings(p),
+    };
+  }
   const responses = question.sources?.map((source) => {
     const up = varied(source, 1);
     const down = forward ? (central as readonly number[]) : varied(source, -1);
