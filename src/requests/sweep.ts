@@ -1,5 +1,4 @@
 /** What `scan` and `grid` share: from axes to a table of abundances with errors at every point. */
-import { errorSources } from "../model/prepare.ts";
 import type { RateLibrary } from "../nuclear/library.ts";
 import {
   ABUNDANCE_NAMES,
@@ -55,7 +54,6 @@ export interface PreparedSweep {
   readonly parameters: CosmologyParameters;
   readonly provenance: Provenance;
   readonly names: readonly AbundanceName[];
-  readonly sources: number;
   /** Points to compute: `first` to `end` - 1. */
   readonly first: number;
   readonly end: number;
@@ -98,8 +96,7 @@ export async function prepareSweep(
   const { first, end } = part === undefined ? { first: 0, end: plan.count } : partRange(plan.count, part);
   requireFits(command, end - first, plan.axes.length + (base.errors === "none" ? 1 : 2) * names.length);
   const model = await modelFor(base, library);
-  const parameters = model.parameters(plan.overrides(0));
-  const sources = errorSources(model.context(parameters), parameters);
+  model.parameters(plan.overrides(0));
   return {
     command,
     plan,
@@ -107,7 +104,6 @@ export async function prepareSweep(
     parameters: model.parameters(),
     provenance: nucleosynthesisProvenance(model, model.parameters()),
     names,
-    sources,
     first,
     end,
     engine: options.engine ?? singleThread(pointAnswerer(library)),
@@ -153,12 +149,13 @@ export async function runSweep(sweep: PreparedSweep, progress?: Progress): Promi
   for (const { point, i } of inOrder) warnings.add(answers[i].warnings, placeOf(plan, point));
   const relative =
     parameters.errors === "linear"
-      ? await relativeErrors(plan, first, end, sweep.sources, names.length, (questions, what) =>
-          ask(
-            questions.map((question) => ({ ...question, values: false })),
-            what,
-          ),
-        )
+      ? await relativeErrors(plan, first, end, names.length, async (nodes) => {
+          const found = await ask(
+            nodes.map((point) => ({ point, values: false, linear: true })),
+            "error bands",
+          );
+          return found.map((answer) => answer.responses as number[][]);
+        })
       : undefined;
   const rows = new Array<number[]>(end - first);
   points.forEach((point, i) => {

@@ -1,28 +1,18 @@
-/** Error bands of a scan or grid: responses to the sources that carry the variance, at nodes along each line. */
+/** Error bands of a scan or grid: responses to every source at nodes along each line, interpolated between. */
 import { notAKnotSpline } from "../numerics/interpolate.ts";
 import type { Plan } from "./plan.ts";
-import type { PointAnswer, PointQuestion } from "./point.ts";
 
-/** Asks about point `i` of the plan. */
-export interface BandQuestion extends Pick<PointQuestion, "sources" | "differences"> {
-  readonly point: number;
-}
-/** Answers about points, in the order of the questions; `what` names the stage for the progress line. */
-export type AskResponses = (questions: readonly BandQuestion[], what: string) => Promise<readonly PointAnswer[]>;
+/** Asks for the responses at points of the plan; responses[source][abundance] of each, in the order of the points. */
+export type AskResponses = (points: readonly number[]) => Promise<readonly Responses[]>;
+type Responses = readonly (readonly number[])[];
 
-/** Number of sources up to which none is left out. */
-const FEW_SOURCES = 16;
-/** Largest share of a variance, at the points where it is measured, that the sources left out may carry. */
-const NEGLECTED_VARIANCE = 0.006;
 /** Nodes a line starts with. */
 const FIRST_NODES = 7;
 /**
  * Difference between a band and the same band interpolated from nodes twice as far apart, relative. Cubic
- * interpolation errs 16 times less at half the spacing, so the band that is kept errs below 0.3 %.
+ * interpolation errs 16 times less at half the spacing, so the band that is kept errs below 0.4 %.
  */
-const HALVING_DIFFERENCE = 0.04;
-/** Sources asked for at once: so many runs before other threads get their share. */
-const CHUNK = 8;
+const HALVING_DIFFERENCE = 0.06;
 
 /** One line of points along the longest axis: numbers of the points, by rising coordinate. */
 interface Line {
@@ -34,34 +24,26 @@ interface Line {
  * Relative standard deviations sigma/x of every abundance at points `first` to `end` - 1.
  * The lines and nodes depend on the plan alone, so a part has the bands of the whole.
  *
- * sigma_x^2/x^2 = sum over sources of (d ln x/dp_s)^2. Sources of which all left out together carry at most 0.6 % of
- * each variance, measured at the ends and the middle of the plan, are left out; the responses are smooth along an axis
- * and are interpolated by cubic splines between nodes that are added until halving their distance changes nothing.
- * Within 1 % of the full errors.
- * @param sources number of sources at every point
- * @param width   number of abundances
+ * sigma_x^2/x^2 = sum over sources of (d ln x/dp_s)^2. The responses d ln x/dp_s are smooth along an axis; they are
+ * computed at nodes and interpolated by cubic splines, nodes being added until halving their distance changes nothing.
+ * Within 1 % of the errors of single runs.
+ * @param width number of abundances
  */
 export async function relativeErrors(
   plan: Plan,
   first: number,
   end: number,
-  sources: number,
   width: number,
   ask: AskResponses,
 ): Promise<Map<number, Float64Array>> {
-  const carrying = await selectSources(plan, sources, ask);
   const lines = linesThrough(plan, first, end);
   const found = new Map<number, Float64Array>();
-  const known = lines.map(() => new Map<number, readonly (readonly number[])[]>());
+  const known = lines.map(() => new Map<number, Responses>());
   let open = lines.map((line) => evenly(line.points.length, FIRST_NODES));
   for (let round = 0; open.some((nodes) => nodes.length > 0); round++) {
     const wanted = open.flatMap((nodes, l) => nodes.map((node) => ({ l, node, point: lines[l].points[node] })));
-    const answers = await responsesAt(
-      wanted.map(({ point }) => point),
-      carrying,
-      ask,
-    );
-    const fresh = lines.map(() => new Map<number, readonly (readonly number[])[]>());
+    const answers = await ask(wanted.map(({ point }) => point));
+    const fresh = lines.map(() => new Map<number, Responses>());
     for (const [i, { l, node }] of wanted.entries()) fresh[l].set(node, answers[i]);
     open = lines.map((line, l) => {
       const next = round === 0 ? gapsOf([...fresh[l].keys()]) : refine(line, known[l], fresh[l], width);
@@ -76,55 +58,6 @@ export async function relativeErrors(
     });
   });
   return found;
-}
-
-/** Numbers of the sources that together carry all but a negligible share of every variance. */
-async function selectSources(plan: Plan, sources: number, ask: AskResponses): Promise<number[]> {
-  const all = Array.from({ length: sources }, (_, s) => s);
-  if (sources <= FEW_SOURCES) return all;
-  const last = plan.count - 1;
-  const corners = plan.axes.length < 2 ? [] : [plan.axes[plan.axes.length - 1].values.length - 1];
-  const points = [...new Set([0, Math.floor(last / 2), last, ...corners, ...corners.map((c) => last - c)])];
-  const responses = await responsesAt(points, all, ask, "forward");
-  const shares = responses.flatMap((atPoint) =>
-    atPoint[0].map((_, x) => {
-      const squares = atPoint.map((row) => row[x] ** 2);
-      const sum = squares.reduce((total, square) => total + square, 0);
-      return squares.map((square) => (sum > 0 ? square / sum : 0));
-    }),
-  );
-  const largest = (s: number) => Math.max(...shares.map((row) => row[s]));
-  const dropped = shares.map(() => 0);
-  const kept = new Set(all);
-  for (const s of [...all].sort((a, b) => largest(a) - largest(b))) {
-    if (shares.some((row, i) => dropped[i] + row[s] > NEGLECTED_VARIANCE)) break;
-    shares.forEach((row, i) => {
-      dropped[i] += row[s];
-    });
-    kept.delete(s);
-  }
-  return [...kept];
-}
-
-/** responses[point][source][abundance], asked for in small pieces. */
-async function responsesAt(
-  points: readonly number[],
-  sources: readonly number[],
-  ask: AskResponses,
-  differences: "central" | "forward" = "central",
-): Promise<number[][][]> {
-  const pieces = points.flatMap((point) =>
-    Array.from({ length: Math.ceil(sources.length / CHUNK) }, (_, c) => ({
-      point,
-      sources: sources.slice(c * CHUNK, (c + 1) * CHUNK),
-      differences,
-    })),
-  );
-  const answers = await ask(pieces, differences === "forward" ? "sources of error" : "error bands");
-  const perPoint = Math.ceil(sources.length / CHUNK);
-  return points.map((_, i) =>
-    answers.slice(i * perPoint, (i + 1) * perPoint).flatMap((answer) => answer.responses as number[][]),
-  );
 }
 
 function linesThrough(plan: Plan, first: number, end: number): Line[] {
@@ -161,7 +94,7 @@ function gapsOf(nodes: readonly number[]): number[] {
   return sorted.slice(1).flatMap((node, i) => (node - sorted[i] > 1 ? [Math.floor((node + sorted[i]) / 2)] : []));
 }
 
-type Known = ReadonlyMap<number, readonly (readonly number[])[]>;
+type Known = ReadonlyMap<number, Responses>;
 
 /** Middles of the gaps beside the fresh nodes whose band was not foreseen from the known ones. */
 function refine(line: Line, known: Known, fresh: Known, width: number): number[] {
@@ -179,7 +112,7 @@ function refine(line: Line, known: Known, fresh: Known, width: number): number[]
   return [...next].sort((a, b) => a - b);
 }
 
-function combine(responses: readonly (readonly number[])[], width: number): Float64Array {
+function combine(responses: Responses, width: number): Float64Array {
   const sum = new Float64Array(width);
   for (const row of responses) for (let x = 0; x < width; x++) sum[x] += row[x] ** 2;
   return sum.map(Math.sqrt);

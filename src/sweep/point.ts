@@ -8,7 +8,6 @@ import {
   scaleFactors,
   validityWarnings,
 } from "../model/prepare.ts";
-import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
 import { addCounts, type RunInputs } from "../nucleosynthesis/run.ts";
 import { CalculationError, InputError } from "../numerics/check.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
@@ -19,13 +18,9 @@ export interface PointQuestion {
   readonly overrides: Keys;
   /** How the point is named in the message of a failure, e.g. `eta10 = 3`. */
   readonly where: string;
-  /** Whether the abundances at the point itself are wanted. */
+  /** Whether the abundances at the point itself are wanted; they come in any case. */
   readonly values: boolean;
-  /** Sources of error whose responses are wanted, by number as in {@link applyVariations}. */
-  readonly sources?: readonly number[];
-  /** Differences of the responses: `central` at p = +-1, the definition of the linear error; `forward`, half the cost. */
-  readonly differences?: "central" | "forward";
-  /** Whether the responses to all sources are wanted, by the adjoint of one run; instead of `sources`. */
+  /** Whether the responses to every source of error are wanted, as {@link linearErrors} finds them. */
   readonly linear?: boolean;
   /** Whether the errors are those of the model's own error analysis (samples), one sigma an abundance. */
   readonly sigma?: boolean;
@@ -35,17 +30,10 @@ export interface PointQuestion {
 export interface PointAnswer {
   readonly values?: readonly number[];
   readonly sigma?: readonly number[];
-  /** responses[s][x] = d ln x/dp of the s-th source asked for; 0 where an abundance is 0. */
+  /** responses[s][x] = d ln x/dp of source s, in the order of {@link applyVariations}; 0 where an abundance is 0. */
   readonly responses?: readonly (readonly number[])[];
   readonly counts: SolverCounts;
   readonly warnings: readonly string[];
-}
-
-/** What does not differ from point to point. */
-export interface PointFrame {
-  readonly names: readonly AbundanceName[];
-  /** Number of independent sources of error. */
-  readonly sources: number;
 }
 
 /**
@@ -78,52 +66,26 @@ function answer(model: Model, question: PointQuestion): PointAnswer {
   const context = model.context(p);
   const factors = scaleFactors(context.data, p.scales, model.library);
   const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
-  let counts: SolverCounts = { steps: 0, rejected: 0, rhs: 0, jacobians: 0, factorisations: 0 };
-  const run = (given: RunInputs) => {
-    const found = model.evaluate(context, given);
-    counts = addCounts(counts, found.counts);
-    return found.values;
-  };
-  const forward = question.differences === "forward";
-  const central = question.values || (forward && question.sources !== undefined) ? run(inputs) : undefined;
-  const total = errorSources(context, p);
-  const varied = (source: number, sign: number) => {
-    const variations = new Float64Array(total);
-    variations[source] = sign;
-    return run(applyVariations(context, inputs, p, variations));
-  };
-  if (question.linear === true) {
-    const values = run(inputs);
-    const linear = linearErrors(
-      context,
-      inputs,
-      p,
-      values,
-      (Y) => reported(context, Y),
-      (source, sign) => {
-        const variations = new Float64Array(total);
-        variations[source] = sign;
-        return model.evaluate(context, applyVariations(context, inputs, p, variations));
-      },
-    );
-    return {
-      values,
-      responses: linear.response.map((row) => [...row]),
-      counts: addCounts(counts, linear.counts),
-      warnings: validityWarnings(p),
-    };
-  }
-  const responses = question.sources?.map((source) => {
-    const up = varied(source, 1);
-    const down = forward ? (central as readonly number[]) : varied(source, -1);
-    const width = forward ? 1 : 2;
-    return up.map((x, i) => (x > 0 && down[i] > 0 ? (Math.log(x) - Math.log(down[i])) / width : 0));
-  });
+  const { values, counts } = model.evaluate(context, inputs);
+  const warnings = validityWarnings(p);
+  if (question.linear !== true) return { values, counts, warnings };
+  const linear = linearErrors(
+    context,
+    inputs,
+    p,
+    values,
+    (Y) => reported(context, Y),
+    (source, sign) => {
+      const variations = new Float64Array(errorSources(context, p));
+      variations[source] = sign;
+      return model.evaluate(context, applyVariations(context, inputs, p, variations));
+    },
+  );
   return {
-    ...(question.values ? { values: central } : {}),
-    ...(responses ? { responses } : {}),
-    counts,
-    warnings: validityWarnings(p),
+    values,
+    responses: linear.response.map((row) => [...row]),
+    counts: addCounts(counts, linear.counts),
+    warnings,
   };
 }
 
