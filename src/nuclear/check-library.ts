@@ -97,9 +97,9 @@ function checkFolder(library: RateLibrary, id: string): { files: number; finding
       findings.push(refusal(error, `${id}/${name}.ecsv`));
     }
   }
-  for (const [i, table] of tables.entries())
-    for (const other of tables.slice(0, i))
-      if (sameNumbers(table, other))
+  for (const table of tables)
+    for (const other of tables)
+      if (table !== other && sameNumbers(table, other))
         findings.push({
           severity: "warning",
           file: table.file,
