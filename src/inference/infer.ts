@@ -6,7 +6,8 @@ import type { Observation, ObservedData } from "./observations.ts";
 import { gridPosterior, type ParameterEstimate, type Posterior } from "./posterior.ts";
 import { FREE_PARAMETERS, type FreeKey, type Prior } from "./priors.ts";
 import { sampledPosterior } from "./sampled-posterior.ts";
-import { type AskTheory, buildTheory, type Theory, type TheoryAccuracy, type TheoryFrame } from "./theory.ts";
+import { buildTheory, type Theory, type TheoryAccuracy } from "./theory.ts";
+import type { AskTheory, TheoryFrame } from "./theory-points.ts";
 
 /** One observed abundance beside the prediction at the best point. */
 export interface Comparison extends Observation {

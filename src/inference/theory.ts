@@ -1,37 +1,8 @@
-/** The theory behind an inference: abundances and their error responses on Chebyshev points, with the measured error between. */
+/** The theory behind an inference: abundances and their covariance between computed points, with the measured error. */
 import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
 import { ChebyshevInterpolant, chebyshevPoints } from "../numerics/chebyshev.ts";
-import { CalculationError } from "../numerics/check.ts";
-import type { Keys } from "../parameters/cosmology.ts";
 import { FREE_PARAMETERS, type FreeKey, type Prior } from "./priors.ts";
-
-/** What is asked of the calculation at one point of parameter space. */
-export interface TheoryQuestion {
-  readonly overrides: Keys;
-  /** How the point is named if it fails. */
-  readonly where: string;
-  readonly values: boolean;
-  /** Numbers of the sources of error whose responses d ln X/dp are wanted. */
-  readonly sources?: readonly number[];
-  readonly differences?: "central" | "forward";
-}
-
-export interface TheoryAnswer {
-  readonly values?: readonly number[];
-  /** responses[s][x] of the s-th source asked for. */
-  readonly responses?: readonly (readonly number[])[];
-}
-
-/** Answers questions in their order; in one thread or many. */
-export type AskTheory = (questions: readonly TheoryQuestion[]) => Promise<readonly TheoryAnswer[]>;
-
-/** What does not change from point to point. */
-export interface TheoryFrame {
-  /** Names of the values of an answer. */
-  readonly names: readonly AbundanceName[];
-  /** Sources of error that count, by number: those of parameters that are free are left out. */
-  readonly sources: readonly number[];
-}
+import { type AskTheory, type Coordinates, type TheoryFrame, TheoryPoints, toCoordinate } from "./theory-points.ts";
 
 /** Abundance that is wanted, and the relative error beside which interpolation must not count. */
 export interface Wanted {
@@ -41,6 +12,7 @@ export interface Wanted {
 
 /** Measured quality of the interpolation, at points halfway between those it was built on. */
 export interface TheoryAccuracy {
+  /** Points it was built on, and points at which it was tried. */
   readonly points: number;
   readonly checks: number;
   /** Largest error of each abundance, |delta ln X|. */
@@ -49,8 +21,6 @@ export interface TheoryAccuracy {
   readonly inSigma: number;
   /** Largest relative error of a theory sigma. */
   readonly sigma: number;
-  /** Largest share of a variance in the sources that were left out as negligible. */
-  readonly neglectedShare: number;
 }
 
 /** Abundances with their theory covariance anywhere within the ranges of the priors. */
@@ -67,16 +37,12 @@ export interface Theory {
   predict(point: ArrayLike<number>, values: Float64Array, covariance: Float64Array): void;
 }
 
-/** Interpolation error that is allowed beside an observed error [sigma]; more points are taken until it holds. */
+/** Interpolation error that is allowed beside an observed error [sigma]. */
 export const ALLOWED_SIGMA = 0.02;
-/** Sources whose share of every variance is below this are left out. */
-const LEAST_SHARE = 3e-4;
-/** How often the number of points may be doubled. */
+/** Relative error that is allowed of a theory sigma. */
+export const ALLOWED_THEORY = 0.05;
+/** How often points are taken: where an error is larger than allowed they are doubled. */
 const ROUNDS = 3;
-
-const toCoordinate = (key: FreeKey, value: number) =>
-  FREE_PARAMETERS[key].coordinate === "ln" ? Math.log(value) : value;
-const fromCoordinate = (key: FreeKey, x: number) => (FREE_PARAMETERS[key].coordinate === "ln" ? Math.exp(x) : x);
 
 /** Points for a range of another size than the default: as dense, never fewer than three fifths. */
 function scaledCount(count: number, { key, min, max }: Prior): number {
@@ -90,10 +56,12 @@ function product(axes: readonly ArrayLike<number>[]): number[][] {
 }
 
 /**
- * Builds the theory over the ranges of the priors.
- * @param ask   answers questions; called a few times with many at once
- * @param tell  told the share done
- * @throws {CalculationError} if an abundance is not positive somewhere, so that it has no logarithm
+ * Builds the theory over the ranges of the priors: ln X and its responses to the sources of error on products of
+ * Chebyshev points, denser for ln X, which is smooth to many digits. Both are tried between the points, which are
+ * doubled until their errors do not count.
+ * @param ask  answers questions; called few times, with many at once
+ * @param tell told the share done
+ * @throws {CalculationError} if the calculation fails somewhere
  */
 export async function buildTheory(
   ask: AskTheory,
@@ -102,181 +70,153 @@ export async function buildTheory(
   wanted: readonly Wanted[],
   tell?: (share: number) => void,
 ): Promise<Theory> {
-  const keys = priors.map(({ key }) => key);
-  const columns = wanted.map(({ abundance }) => frame.names.indexOf(abundance));
-  const M = wanted.length;
+  const abundances = wanted.map(({ abundance }) => abundance);
+  const points = new TheoryPoints(ask, frame, priors, abundances);
   const range = priors.map(({ key, min, max }) => [toCoordinate(key, min), toCoordinate(key, max)] as const);
   const axesOf = (counts: readonly number[]) => counts.map((n, d) => chebyshevPoints(n, ...range[d]));
-
-  const question = (x: readonly number[]): Omit<TheoryQuestion, "values"> => {
-    const parameters = x.map((value, d) => fromCoordinate(keys[d], value));
-    return {
-      overrides: Object.fromEntries(keys.map((key, d) => [key, parameters[d]])),
-      where: keys.map((key, d) => `${key} = ${parameters[d].toPrecision(6)}`).join(", "),
-    };
-  };
-  const lnOf = (answer: TheoryAnswer, where: string) =>
-    columns.map((column, m) => {
-      const x = answer.values?.[column] ?? Number.NaN;
-      if (!(x > 0))
-        throw new CalculationError(
-          "abundance",
-          `${wanted[m].abundance} = ${x} at ${where}: has no logarithm to compare`,
-        );
-      return Math.log(x);
-    });
-
-  const known = new Map<string, readonly number[]>();
-  async function lnValues(points: readonly (readonly number[])[]): Promise<(readonly number[])[]> {
-    const missing = points.filter((x) => !known.has(x.join(" ")));
-    const asked = missing.map((x) => ({ ...question(x), values: true }));
-    for (const [i, answer] of (await ask(asked)).entries())
-      known.set(missing[i].join(" "), lnOf(answer, asked[i].where));
-    return points.map((x) => known.get(x.join(" ")) as readonly number[]);
-  }
-
-  // Sources of error that matter anywhere: one-sided responses along the first axis, the others at their middle.
-  const errorCounts = priors.map((prior) => scaledCount(FREE_PARAMETERS[prior.key].errorPoints, prior));
-  const middle = range.map(([a, b]) => (a + b) / 2);
-  const along = chebyshevPoints(3, ...range[0]);
-  const survey = await ask(
-    Array.from(along, (x) => ({
-      ...question([x, ...middle.slice(1)]),
-      values: false,
-      sources: frame.sources,
-      differences: "forward" as const,
-    })),
-  );
-  tell?.(0.2);
-  const shares = survey.flatMap(({ responses = [] }) =>
-    columns.map((column) => {
-      const squares = responses.map((row) => row[column] ** 2);
-      const whole = squares.reduce((sum, x) => sum + x, 0);
-      return squares.map((x) => (whole > 0 ? x / whole : 0));
-    }),
-  );
-  const kept = frame.sources.flatMap((source, s) =>
-    shares.some((row) => row[s] > LEAST_SHARE) ? [{ source, s }] : [],
-  );
-  const keptNumbers = new Set(kept.map(({ s }) => s));
-  const neglectedShare = Math.max(
-    0,
-    ...shares.map((row) => row.reduce((sum, share, s) => (keptNumbers.has(s) ? sum : sum + share), 0)),
-  );
-  const sources = kept.map(({ source }) => source);
-  const S = sources.length;
-  const responsesAt = async (points: readonly (readonly number[])[]): Promise<number[][]> =>
-    (await ask(points.map((x) => ({ ...question(x), values: false, sources })))).map(({ responses = [] }) =>
-      responses.flatMap((row) => columns.map((column) => row[column])),
-    );
-  const errorAxes = axesOf(errorCounts);
-  const responses = new ChebyshevInterpolant(
-    errorAxes,
-    S * M,
-    Float64Array.from((await responsesAt(product(errorAxes))).flat()),
-  );
-  tell?.(0.6);
-
-  // Abundances: points doubled until the error between them does not count beside the observed errors.
   let counts = priors.map((prior) => scaledCount(FREE_PARAMETERS[prior.key].points, prior));
+  let errorCounts = priors.map((prior) => scaledCount(FREE_PARAMETERS[prior.key].errorPoints, prior));
   for (let round = 1; ; round++) {
-    const axes = axesOf(counts);
-    const values = new ChebyshevInterpolant(axes, M, Float64Array.from((await lnValues(product(axes))).flat()));
-    const checks = checkPoints(axes);
-    const exact = await lnValues(checks);
-    const found = new Float64Array(M);
-    const worst = new Float64Array(M);
-    checks.forEach((x, i) => {
-      values.evaluate(x, found);
-      for (let m = 0; m < M; m++) worst[m] = Math.max(worst[m], Math.abs(found[m] - exact[i][m]));
-    });
-    const inSigma = Math.max(...wanted.map(({ relativeSigma }, m) => worst[m] / relativeSigma));
-    if (inSigma > ALLOWED_SIGMA && round < ROUNDS) {
-      counts = counts.map((n) => 2 * n - 1);
+    const [axes, errorAxes] = [axesOf(counts), axesOf(errorCounts)];
+    const [checks, errorChecks] = [checkPoints(axes), errorCheckPoints(errorAxes, axes)];
+    await points.compute([...product(axes), ...checks], [...product(errorAxes), ...errorChecks]);
+    tell?.(round / (round + 0.2));
+    const values = new ChebyshevInterpolant(
+      axes,
+      wanted.length,
+      Float64Array.from(product(axes).flatMap((x) => points.lnValues(x))),
+    );
+    const responses = interpolateResponses(points, errorAxes, wanted.length);
+    const errors = valueErrors(points, values, checks, wanted.length);
+    const inSigma = Math.max(...wanted.map(({ relativeSigma }, m) => errors[m] / relativeSigma));
+    const sigma = sigmaError(points, responses, errorChecks, wanted.length);
+    const fine = [inSigma <= ALLOWED_SIGMA, sigma <= ALLOWED_THEORY];
+    if (round < ROUNDS && fine.includes(false)) {
+      if (!fine[0]) counts = counts.map((n) => 2 * n - 1);
+      if (!fine[1]) errorCounts = errorCounts.map((n) => 2 * n - 1);
       continue;
     }
-    tell?.(0.9);
-    const errorChecks = checkPoints(errorAxes).slice(0, 2);
-    const sigma = sigmaError(responses, errorChecks, await responsesAt(errorChecks), S, M);
-    const predict = predictor(keys, values, responses, S, M);
     return {
-      keys,
-      abundances: wanted.map(({ abundance }) => abundance),
+      keys: priors.map(({ key }) => key),
+      abundances,
       accuracy: {
-        points: known.size - checks.length,
-        checks: checks.length,
-        values: Object.fromEntries(wanted.map(({ abundance }, m) => [abundance, worst[m]])),
+        points: new Set([...product(axes), ...product(errorAxes)].map((x) => x.join(" "))).size,
+        checks: checks.length + errorChecks.length,
+        values: Object.fromEntries(abundances.map((abundance, m) => [abundance, errors[m]])),
         inSigma,
         sigma,
-        neglectedShare,
       },
-      predict,
+      predict: predictor(priors, values, responses, wanted.length),
     };
   }
 }
 
-/** Number of points at which the interpolation is tried out. */
-const CHECKS = 6;
+/** Responses to the sources that matter, between points. */
+interface ResponseInterpolant {
+  readonly sources: number;
+  readonly interpolant: ChebyshevInterpolant;
+}
 
-/**
- * Points halfway (in angle) between Chebyshev points, where the error is largest: along the first axis near both ends and
- * in between, along the others at two places only, since each of them costs a thermal history.
- */
-function checkPoints(axes: readonly Float64Array[]): number[][] {
-  const between = (axis: Float64Array, share: number) => {
-    const n = axis.length;
-    const k = Math.min(n - 2, Math.floor(share * (n - 1)));
-    const [a, b] = [axis[0], axis[n - 1]];
-    return (a + b) / 2 - ((b - a) / 2) * Math.cos((Math.PI * (k + 0.5)) / (n - 1));
+/** Share of a variance below which a source, at every point and for every abundance, is left out of the interpolation. */
+const LEAST_SHARE = 1e-4;
+
+function interpolateResponses(points: TheoryPoints, axes: readonly Float64Array[], M: number): ResponseInterpolant {
+  const all = product(axes).map((x) => points.responses(x));
+  const whole = all.map((rows) => Array.from({ length: M }, (_, m) => rows.reduce((sum, row) => sum + row[m] ** 2, 0)));
+  const kept = Array.from(all[0].keys()).filter((s) =>
+    all.some((rows, i) => rows[s].some((x, m) => x * x > LEAST_SHARE * whole[i][m])),
+  );
+  const values = all.flatMap((rows) => kept.flatMap((s) => rows[s]));
+  return {
+    sources: kept.length,
+    interpolant: new ChebyshevInterpolant(axes, kept.length * M, Float64Array.from(values)),
   };
+}
+
+/** Number of points at which ln X and the theory errors are tried out. */
+const CHECKS = 6;
+const ERROR_CHECKS = 4;
+
+/** Coordinate halfway (in angle) between two Chebyshev points, where the error is largest. @param share 0 to 1 along the axis */
+function halfway(axis: Float64Array, share: number): number {
+  const n = axis.length;
+  const k = Math.min(n - 2, Math.floor(share * (n - 1)));
+  const [a, b] = [axis[0], axis[n - 1]];
+  return (a + b) / 2 - ((b - a) / 2) * Math.cos((Math.PI * (k + 0.5)) / (n - 1));
+}
+
+/** Shares of an axis but the first at which the theory is tried: two only, since each costs a thermal history. */
+const OTHER_SHARES = [0.55, 0.99] as const;
+const otherShare = (i: number, d: number) => OTHER_SHARES[(i + d) % 2];
+
+/** Points at which ln X is tried: halfway between its points on every axis. */
+function checkPoints(axes: readonly Float64Array[]): Coordinates[] {
   return Array.from({ length: CHECKS }, (_, i) =>
-    axes.map((axis, d) => (d === 0 ? between(axis, i / (CHECKS - 1)) : between(axis, i % 2 === d % 2 ? 0.55 : 0.99))),
+    axes.map((axis, d) => halfway(axis, d === 0 ? i / (CHECKS - 1) : otherShare(i, d))),
   );
 }
 
-/** Largest relative error of an interpolated standard deviation. */
+/** Points at which the theory errors are tried: on the other axes at points of ln X, whose histories are known. */
+function errorCheckPoints(errorAxes: readonly Float64Array[], axes: readonly Float64Array[]): Coordinates[] {
+  return Array.from({ length: ERROR_CHECKS }, (_, i) =>
+    axes.map((axis, d) => {
+      if (d === 0) return halfway(errorAxes[0], i / (ERROR_CHECKS - 1));
+      return axis[Math.min(axis.length - 2, Math.floor(otherShare(i, d) * (axis.length - 1)))];
+    }),
+  );
+}
+
+/** Largest error of ln X of each abundance. */
+function valueErrors(points: TheoryPoints, values: ChebyshevInterpolant, checks: readonly Coordinates[], M: number) {
+  const found = new Float64Array(M);
+  const worst = new Float64Array(M);
+  for (const x of checks) {
+    values.evaluate(x, found);
+    const exact = points.lnValues(x);
+    for (let m = 0; m < M; m++) worst[m] = Math.max(worst[m], Math.abs(found[m] - exact[m]));
+  }
+  return worst;
+}
+
+/** Largest relative error of a theory sigma, against all sources, left out or not. */
 function sigmaError(
-  interpolant: ChebyshevInterpolant,
-  points: readonly (readonly number[])[],
-  exact: readonly (readonly number[])[],
-  S: number,
+  points: TheoryPoints,
+  { sources, interpolant }: ResponseInterpolant,
+  checks: readonly Coordinates[],
   M: number,
 ): number {
-  const found = new Float64Array(S * M);
-  const sigma = (rows: ArrayLike<number>, m: number) => {
-    let sum = 0;
-    for (let s = 0; s < S; s++) sum += rows[s * M + m] ** 2;
-    return Math.sqrt(sum);
-  };
+  const found = new Float64Array(sources * M);
   let worst = 0;
-  points.forEach((x, i) => {
+  for (const x of checks) {
     interpolant.evaluate(x, found);
+    const exact = points.responses(x);
     for (let m = 0; m < M; m++) {
-      const truth = sigma(exact[i], m);
-      if (truth > 0) worst = Math.max(worst, Math.abs(sigma(found, m) / truth - 1));
+      const truth = Math.hypot(...exact.map((row) => row[m]));
+      let sum = 0;
+      for (let s = 0; s < sources; s++) sum += found[s * M + m] ** 2;
+      if (truth > 0) worst = Math.max(worst, Math.abs(Math.sqrt(sum) / truth - 1));
     }
-  });
+  }
   return worst;
 }
 
 function predictor(
-  keys: readonly FreeKey[],
+  priors: readonly Prior[],
   lnValues: ChebyshevInterpolant,
-  responses: ChebyshevInterpolant,
-  S: number,
+  { sources, interpolant }: ResponseInterpolant,
   M: number,
 ): Theory["predict"] {
-  const x = new Float64Array(keys.length);
-  const rows = new Float64Array(S * M);
+  const x = new Float64Array(priors.length);
+  const rows = new Float64Array(sources * M);
   return (point, values, covariance) => {
-    for (let d = 0; d < keys.length; d++) x[d] = toCoordinate(keys[d], point[d]);
+    for (let d = 0; d < priors.length; d++) x[d] = toCoordinate(priors[d].key, point[d]);
     lnValues.evaluate(x, values);
-    responses.evaluate(x, rows);
+    interpolant.evaluate(x, rows);
     for (let m = 0; m < M; m++) values[m] = Math.exp(values[m]);
     for (let i = 0; i < M; i++)
       for (let j = 0; j <= i; j++) {
         let sum = 0;
-        for (let s = 0; s < S; s++) sum += rows[s * M + i] * rows[s * M + j];
+        for (let s = 0; s < sources; s++) sum += rows[s * M + i] * rows[s * M + j];
         covariance[i * M + j] = covariance[j * M + i] = sum * values[i] * values[j];
       }
   };

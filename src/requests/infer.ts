@@ -2,8 +2,8 @@
 import { runInference } from "../inference/infer.ts";
 import { DEFAULT_SET, parseObserved } from "../inference/observations.ts";
 import { type FreeKey, parseFree, parsePriors } from "../inference/priors.ts";
-import type { AskTheory, TheoryQuestion } from "../inference/theory.ts";
-import { errorSources, type Model, validityWarnings } from "../model/prepare.ts";
+import type { AskTheory, TheoryQuestion } from "../inference/theory-points.ts";
+import { type Model, validityWarnings } from "../model/prepare.ts";
 import type { RateLibrary } from "../nuclear/library.ts";
 import { ABUNDANCE_NAMES } from "../nucleosynthesis/abundances.ts";
 import { addCounts } from "../nucleosynthesis/run.ts";
@@ -66,16 +66,12 @@ export async function computeInfer(
   const parameters = model.parameters();
   const data = parseObserved(observed ?? DEFAULT_SET, library.files);
   const priors = parsePriors(prior, freeKeys, library.files, parameters.tCmb);
-  const sources = errorSources(model.context(parameters), parameters);
   const asking = askEngine(engine, keys);
   const { warnings, ...results } = await runInference(
     { observed: data, priors, tCmb: parameters.tCmb, seed: parameters.seed },
     asking.ask,
-    {
-      names: ABUNDANCE_NAMES,
-      // Source 0 is tau_n: where it is free its error is the posterior's.
-      sources: Array.from({ length: sources }, (_, s) => s).filter((s) => !(s === 0 && freeKeys.includes("tauN"))),
-    },
+    // Source 0 is tau_n: where it is free its error is the posterior's.
+    { names: ABUNDANCE_NAMES, ...(freeKeys.includes("tauN") ? { freeSource: 0 } : {}) },
     (share) => progress?.(share, "theory of the inference"),
   );
   const best = bestParameters(model, freeKeys, results);
