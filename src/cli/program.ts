@@ -114,7 +114,10 @@ function nameOptions(message: string): string {
   return message
     .replace(/^(network|errors|samples|seed|tolerance|rates|scale|nuclide) (?:= )?/, "--$1 ")
     .replace(/^expansion /, "--expansion ")
-    .replace(/^(h0|z|tauReion|without|from|name|basis) = /, (_, key: string) => `--${key === "tauReion" ? "tau-reion" : key} `);
+    .replace(
+      /^(h0|z|tauReion|without|from|name|basis|citation) = /,
+      (_, key: string) => `--${key === "tauReion" ? "tau-reion" : key} `,
+    );
 }
 
 /** One line for an error, and the exit status. */

@@ -90,7 +90,7 @@ export function makeRate(request: MakeRequest, library: RateLibrary): Envelope<R
   const { source, name, citation, validT9 } = request;
   requireName(name);
   if (citation.trim() === "")
-    throw new InputError("choice", "citation is empty: name the paper, or yourself and the year");
+    throw new InputError("choice", 'citation = "": must not be empty; name the paper, or yourself and the year');
   const basis = requireBasis(request.basis);
   const reaction = parseReactionId(parseReactionName(request.reaction));
   for (const id of [...reaction.reactants, ...reaction.products]) library.nuclide(id);
