@@ -36,6 +36,7 @@ export function densityQuantile({ x, density }: Density, q: number): number {
     if (below + part >= q && part > 0) {
       // a u + (b - a) u^2/2 = wanted/h, with 0 <= u <= 1: the root written so that it holds for b = a as well.
       const wanted = (q - below) / h;
+      if (wanted <= 0) return x[i - 1];
       const u = (2 * wanted) / (a + Math.sqrt(Math.max(0, a * a + 2 * (b - a) * wanted)));
       return x[i - 1] + h * Math.min(1, u);
     }
