@@ -54,12 +54,17 @@ export type { RecombinationResults } from "./model/recombination.ts";
 
 export type { Figure, LineChart, Panel } from "./charts/figure.ts";
 export { historyFigure } from "./charts/history.ts";
+export { compareFigure } from "./charts/rates-compare.ts";
+export { rateFigure } from "./charts/rates-show.ts";
 export { recombinationFigure } from "./charts/recombination.ts";
 export { abundancesTable, abundancesText } from "./output/abundances-output.ts";
 export { toCsv } from "./output/csv.ts";
 export { toEcsv } from "./output/ecsv.ts";
 export { historyText } from "./output/history-output.ts";
 export { toJson } from "./output/json.ts";
+export { ratesCompareText } from "./output/rates-compare-output.ts";
+export { ratesListText } from "./output/rates-list-output.ts";
+export { ratesShowText } from "./output/rates-show-output.ts";
 export { recombinationText } from "./output/recombination-output.ts";
 
 // requests: one function a command
@@ -75,6 +80,8 @@ export type {
 } from "./requests/envelope.ts";
 export { computeHistory } from "./requests/history.ts";
 export { modelFor as prepare } from "./requests/model-for.ts";
+export { computeRates, type RatesKeys, type RatesResults } from "./requests/rates.ts";
+export { type MakeRequest, makeRate } from "./requests/rates-make.ts";
 export { computeRecombination, type RecombinationKeys } from "./requests/recombination.ts";
 
 export { VERSION } from "./version.ts";

@@ -7,6 +7,7 @@ import { computeAbundances } from "../requests/abundances.ts";
 import type { AbundanceResults, Envelope, HistoryResults } from "../requests/envelope.ts";
 import { computeHistory } from "../requests/history.ts";
 import { modelFor } from "../requests/model-for.ts";
+import { computeRates, type RatesKeys, type RatesResults } from "../requests/rates.ts";
 import { computeRecombination, type RecombinationKeys } from "../requests/recombination.ts";
 import { loadRates } from "./load-rates.ts";
 
@@ -45,6 +46,14 @@ export async function recombination(
   { rates }: RatesOption = {},
 ): Promise<Envelope<RecombinationResults>> {
   return computeRecombination(keys, loadRates(rates));
+}
+
+/** The answer of the command `rates` by its action: list, show, compare, check. @throws {InputError | CalculationError} */
+export async function rates(
+  keys: RatesKeys = {},
+  { rates: folder }: RatesOption = {},
+): Promise<Envelope<RatesResults>> {
+  return computeRates(keys, loadRates(folder));
 }
 
 /**

@@ -12,6 +12,7 @@ import { computeGrid } from "./grid.ts";
 import { computeHistory } from "./history.ts";
 import { computeInfer } from "./infer.ts";
 import type { ModelCache } from "./model-cache.ts";
+import { computeRates } from "./rates.ts";
 import { computeRecombination } from "./recombination.ts";
 import { computeScan } from "./scan.ts";
 import type { PointAnswerer } from "./tasks.ts";
@@ -39,6 +40,7 @@ const ANSWERERS: Readonly<Record<string, Answerer>> = {
   grid: (keys, { library, answerPoint }) => computeGrid(keys, library, { engine: singleThread(answerPoint) }),
   budget: (keys, { library }) => computeBudget(keys, library),
   infer: (keys, { library, answerPoint }) => computeInfer(keys, library, { engine: singleThread(answerPoint) }),
+  rates: (keys, { library }) => computeRates(keys, library),
   recombination: (keys, { library }) => computeRecombination(keys, library),
 };
 
