@@ -11,7 +11,14 @@ import {
   ORDER_OF_MAGNITUDE_REASON,
 } from "../nucleosynthesis/abundances.ts";
 import { assembleNetwork, type NetworkData, WEAK_REACTION } from "../nucleosynthesis/network-data.ts";
-import { addCounts, prepareRun, type RunContext, type RunInputs, runNetwork } from "../nucleosynthesis/run.ts";
+import {
+  addCounts,
+  prepareRun,
+  type RunContext,
+  type RunInputs,
+  runNetwork,
+  type Stepping,
+} from "../nucleosynthesis/run.ts";
 import { variedTable } from "../nucleosynthesis/vary.ts";
 import { InputError } from "../numerics/check.ts";
 import { type ExpressionFunction, trivialExpression } from "../numerics/expression.ts";
@@ -51,7 +58,8 @@ export interface AbundanceRun {
   /** With linear errors: share of each abundance's variance due to rates whose uncertainty is not a published one. */
   readonly assumedVarianceShare?: Readonly<Partial<Record<AbundanceName, number>>>;
   readonly quantiles?: Readonly<Record<string, Readonly<Record<string, number>>>>;
-  readonly solver: SolverCounts & { readonly tolerance: number };
+  /** Counts of all runs; `stepping` of the central one. */
+  readonly solver: SolverCounts & { readonly tolerance: number; readonly stepping: Stepping };
   readonly warnings: readonly string[];
 }
 
@@ -75,7 +83,10 @@ export interface Model {
   /** Rates in use for these keys. */
   selection(parameters: CosmologyParameters): readonly SelectedReaction[];
   /** Names and values of the reported abundances for inputs of a run. */
-  evaluate(context: RunContext, inputs: RunInputs): { names: AbundanceName[]; values: number[]; counts: SolverCounts };
+  evaluate(
+    context: RunContext,
+    inputs: RunInputs,
+  ): { names: AbundanceName[]; values: number[]; counts: SolverCounts; stepping: Stepping };
   /** Standardised sources of error in order: n_p (tau_n), each reaction; omega_b last where it has a sigma. */
   readonly library: RateLibrary;
 }
@@ -150,7 +161,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
 
   function evaluate(ctx: RunContext, inputs: RunInputs) {
     const run = runNetwork(ctx, inputs);
-    return { names: reportedNames(ctx), values: reported(ctx, run.Y), counts: run.counts };
+    return { names: reportedNames(ctx), values: reported(ctx, run.Y), counts: run.counts, stepping: run.stepping };
   }
 
   const parameters = (overrides?: Keys) => resolveParameters(mergeKeys(keys, overrides), NUCLEOSYNTHESIS_CORRECTIONS);
@@ -202,7 +213,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
         ...(errors.correlation ? { correlation: errors.correlation } : {}),
         ...(errors.assumedVarianceShare ? { assumedVarianceShare: errors.assumedVarianceShare } : {}),
         ...(errors.quantiles ? { quantiles: errors.quantiles } : {}),
-        solver: { ...counts, tolerance: p.tolerance },
+        solver: { ...counts, stepping: central.stepping, tolerance: p.tolerance },
         warnings: validityWarnings(p),
       });
       if (p.errors === "none") return report({});

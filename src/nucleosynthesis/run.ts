@@ -6,12 +6,14 @@ import { generateKernels, loopKernels, type NetworkKernels } from "../network/ge
 import { lnEquilibriumAbundance } from "../network/nse.ts";
 import { luFactor, luSolve } from "../numerics/linear.ts";
 import { type SolverCounts, type StiffOptions, StiffStepper, type StiffSystem } from "../numerics/ode-stiff.ts";
+import { DEFAULTS } from "../parameters/cosmology.ts";
 import type { WeakTable } from "../weak/table.ts";
 import { type Clock, networkTable, sampleClock, TABLE_INTERVALS, weakOnlyTable } from "./coefficients.ts";
 import { absoluteTolerances } from "./error-scale.ts";
 import { type FluxTable, resample } from "./flux-table.ts";
 import { marchAdaptively } from "./march-run.ts";
 import { type NetworkData, WEAK_REACTION } from "./network-data.ts";
+import { marchStored, SEQUENCE_RANGE } from "./stored-steps.ts";
 
 /** Temperature where n <-> p starts from its equilibrium [MeV]. */
 export const WEAK_START_MEV = 10;
@@ -45,6 +47,8 @@ export interface RunInputs {
   /** Relative error control. */
   readonly tolerance: number;
   readonly method?: "rodas4" | "rodas5p";
+  /** True: choose steps by their error even where a stored sequence would serve. */
+  readonly adaptive?: boolean;
   /** Table with some columns varied, instead of the context's. */
   readonly table?: FluxTable;
 }
@@ -53,7 +57,11 @@ export interface NuclearRun {
   /** Final n_i/n_b in the order of the network's nuclides. */
   readonly Y: Float64Array;
   readonly counts: SolverCounts;
+  readonly stepping: Stepping;
 }
+
+/** How the steps were chosen: a stored sequence checked for this range, or by the error of each step. */
+export type Stepping = "stored" | "adaptive";
 
 /**
  * Joins a network, a thermal history and weak rates.
@@ -250,24 +258,61 @@ export function runNetwork(context: RunContext, inputs: RunInputs): NuclearRun {
   const options = tolerances(context.data, inputs);
   if (options.method === "rodas4") {
     const { compiled } = context.data;
+    const { slots } = compiled.elimination;
     const scale = fluxScale(compiled, table, inputs);
-    const counts = marchAdaptively(
-      context.kernels(),
-      compiled.elimination.slots,
-      table,
-      start.Y,
-      scale,
-      inputs.eta10,
-      options.rtol,
-      options.atol as Float64Array,
-    );
-    return { Y: start.Y, counts: addCounts(start.counts, counts) };
+    const atol = options.atol as Float64Array;
+    const { eta10 } = inputs;
+    const kernels = context.kernels();
+    if (mayUseSequence(context, inputs)) {
+      const Y = start.Y.slice();
+      const counts = marchStored(kernels, slots, table, Y, scale, eta10, options.rtol, atol);
+      if (counts) return { Y, counts: addCounts(start.counts, counts), stepping: "stored" };
+    }
+    const counts = marchAdaptively(kernels, slots, table, start.Y, scale, eta10, options.rtol, atol);
+    return { Y: start.Y, counts: addCounts(start.counts, counts), stepping: "adaptive" };
   }
   const system = networkSystem(context.data.compiled, context.kernels(), table, inputs);
   const end = table.start + table.step * table.intervals;
   const stepper = new StiffStepper(system, table.start, start.Y, end, options);
   while (!stepper.done) stepper.step();
-  return { Y: stepper.y, counts: addCounts(start.counts, stepper.counts) };
+  return { Y: stepper.y, counts: addCounts(start.counts, stepper.counts), stepping: "adaptive" };
+}
+
+/** Reactions that shape the steps, and how far their rates may be from those the sequence was tuned with. */
+const SHAPING = new Set([
+  WEAK_REACTION,
+  "p-n_gamma-d",
+  "d-p_gamma-he3",
+  "d-d_n-he3",
+  "d-d_p-t",
+  "t-d_n-he4",
+  "he3-n_p-t",
+  "he3-d_p-he4",
+]);
+const SHAPING_FACTOR = 1.3;
+const OTHER_FACTOR = 100;
+
+/** The stored sequence serves the default tolerance and method on an unvaried table, in its range of eta and rates. */
+function mayUseSequence(
+  { data }: RunContext,
+  { tolerance, method, table, eta10, adaptive, factors }: RunInputs,
+): boolean {
+  const suits =
+    tolerance === DEFAULTS.tolerance &&
+    method === undefined &&
+    table === undefined &&
+    adaptive !== true &&
+    eta10 >= SEQUENCE_RANGE.min &&
+    eta10 <= SEQUENCE_RANGE.max;
+  if (!suits || factors === undefined) return suits;
+  const { reactions } = data.compiled;
+  for (let k = 0; k < factors.length; k++) {
+    const factor = factors[k];
+    if (factor === 1) continue;
+    const most = SHAPING.has(reactions[k].id) ? SHAPING_FACTOR : OTHER_FACTOR;
+    if (factor > most || factor < 1 / most) return false;
+  }
+  return true;
 }
 
 /** Sum of two sets of solver counts. */

@@ -54,6 +54,8 @@ export interface Provenance {
 /** Cost of the integration. `wall_ms` is the one value that differs from run to run. */
 export interface SolverReport extends Readonly<SolverCounts> {
   readonly tolerance: number;
+  /** Steps of the central run: a stored sequence checked for this range, or chosen by their error. */
+  readonly stepping?: "stored" | "adaptive";
   readonly wall_ms?: number;
 }
 
