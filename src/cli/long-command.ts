@@ -73,9 +73,14 @@ function regularTarget(out: string | undefined): string | undefined {
 
 function interruptedMessage(checkpoint: Checkpoint | undefined): string {
   if (checkpoint === undefined || checkpoint.kept === 0) return "interrupted: nothing was written";
-  const again = process.argv.slice(2).filter((word) => word !== "--resume");
-  const command = ["emberline", ...again.map(shellWord), "--resume"].join(" ");
-  return `interrupted: ${checkpoint.kept} finished pieces are kept in ${checkpoint.path}; go on with: ${command}`;
+  const again = `${commandLine(["--resume"])} --resume`;
+  return `interrupted: ${checkpoint.kept} finished pieces are kept in ${checkpoint.path}; go on with: ${again}`;
+}
+
+/** The command line of this run, as one writes it, without some words. */
+export function commandLine(without: readonly string[]): string {
+  const words = process.argv.slice(2).filter((word) => !without.includes(word));
+  return ["emberline", ...words.map(shellWord)].join(" ");
 }
 
 function shellWord(word: string): string {

@@ -42,6 +42,18 @@ export const SWEEP_COMMANDS: readonly SweepCommand[] = [
     load: () => import("./commands/grid.ts"),
   },
   {
+    name: "report",
+    summary: "everything about one cosmology on one page of HTML that opens without a network",
+    options: () => [
+      ...nucleosynthesisOptions(),
+      ...errorOptions(),
+      ...outputOptions().filter(({ long }) => long !== "--format"),
+      ...resumeOptions(),
+    ],
+    example: "emberline report --omega-b 0.0224±0.0001 --out report.html",
+    load: () => import("./commands/report.ts"),
+  },
+  {
     name: "batch",
     summary: "one JSON request a line on standard input, one JSON answer a line on standard output, in order",
     options: batchOptions,
