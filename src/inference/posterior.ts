@@ -72,8 +72,11 @@ function evenPoints(min: number, max: number, n: number): Float64Array {
 /** Drop of ln posterior below its maximum beyond which nothing is left: 8 sigma of a Gaussian. */
 const DEEP = 32;
 /** Points along each axis: to find the region, and to integrate over it. Odd, so that every second makes a grid too. */
-const SEARCH = { 1: 801, 2: 121 } as const;
-const FINE = { 1: 2001, 2: 261 } as const;
+export interface GridPoints {
+  readonly search: number;
+  readonly fine: number;
+}
+const POINTS: Readonly<Record<1 | 2, GridPoints>> = { 1: { search: 801, fine: 2001 }, 2: { search: 121, fine: 261 } };
 /** How often the search may close in on a region smaller than its grid resolves. */
 const ZOOMS = 4;
 /** A region is resolved when it is this many points wide. */
@@ -197,15 +200,20 @@ export function climb(
 /**
  * Posterior of one or two parameters by integration on a grid. The grid closes in on the region within 8 sigma of the
  * maximum, so that what it leaves out is below 1e-14; its error is measured by leaving out every second point.
+ * @param points fewer than by default where many posteriors are wanted
  */
-export function gridPosterior(fitAt: FitAt, priors: readonly Prior[]): Posterior {
-  const D = priors.length as 1 | 2;
+export function gridPosterior(
+  fitAt: FitAt,
+  priors: readonly Prior[],
+  points: GridPoints = POINTS[priors.length as 1 | 2],
+): Posterior {
+  const D = priors.length;
   const { at, count } = posteriorFunction(fitAt, priors);
   const ln = (point: ArrayLike<number>) => at(point).ln;
   let range = priors.map(({ min, max }): [number, number] => [min, max]);
   for (let zoom = 0; zoom < ZOOMS; zoom++) {
     const grid = gridOf(
-      range.map(([a, b]) => evenPoints(a, b, SEARCH[D])),
+      range.map(([a, b]) => evenPoints(a, b, points.search)),
       ln,
     );
     const region = regionOf(grid);
@@ -213,7 +221,7 @@ export function gridPosterior(fitAt: FitAt, priors: readonly Prior[]): Posterior
     if (region.every(([a, b]) => b - a >= RESOLVED)) break;
   }
   const grid = gridOf(
-    range.map(([a, b]) => evenPoints(a, b, FINE[D])),
+    range.map(([a, b]) => evenPoints(a, b, points.fine)),
     ln,
   );
   const whole = density(grid, 1);

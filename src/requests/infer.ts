@@ -98,7 +98,7 @@ function bestParameters(model: Model, free: readonly FreeKey[], results: InferRe
 }
 
 /** Answers the questions of an inference through an engine, those of one thermal history after the other. */
-function askEngine(engine: TaskEngine, base: Keys): { ask: AskTheory; counts: () => SolverCounts } {
+export function askEngine(engine: TaskEngine, base: Keys): { ask: AskTheory; counts: () => SolverCounts } {
   let counts: SolverCounts = { steps: 0, rejected: 0, rhs: 0, jacobians: 0, factorisations: 0 };
   const history = ({ overrides: { nEff = 0, xiE = 0 } }: TheoryQuestion) => `${nEff} ${xiE}`;
   const ask: AskTheory = async (questions) => {
