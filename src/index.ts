@@ -47,20 +47,33 @@ export { RECOMBINATION_SWITCHES } from "./recombination/switches.ts";
 
 // model: prepared once, asked often
 
+export type { ErrorBudget } from "./model/error-budget.ts";
 export type { AbundanceRun, Estimate, Model } from "./model/prepare.ts";
 export type { RecombinationResults } from "./model/recombination.ts";
 
+// uncertainty, inference
+
+export type { Inference } from "./inference/infer.ts";
+export { type Observation, parseObserved, readObservations } from "./inference/observations.ts";
+export { type CentralStep, centralSensitivities, relativeStep } from "./uncertainty/sensitivity.ts";
+
 // output, charts
 
+export { budgetFigure } from "./charts/budget.ts";
 export type { Figure, LineChart, Panel } from "./charts/figure.ts";
 export { historyFigure } from "./charts/history.ts";
+export { inferFigure } from "./charts/infer.ts";
 export { compareFigure } from "./charts/rates-compare.ts";
 export { rateFigure } from "./charts/rates-show.ts";
 export { recombinationFigure } from "./charts/recombination.ts";
 export { abundancesTable, abundancesText } from "./output/abundances-output.ts";
+export { budgetTable, budgetText } from "./output/budget-output.ts";
+export type { BudgetResults } from "./output/budget-result.ts";
 export { toCsv } from "./output/csv.ts";
 export { toEcsv } from "./output/ecsv.ts";
 export { historyText } from "./output/history-output.ts";
+export { inferTable, inferText } from "./output/infer-output.ts";
+export type { InferResults } from "./output/infer-result.ts";
 export { toJson } from "./output/json.ts";
 export { ratesCompareText } from "./output/rates-compare-output.ts";
 export { ratesListText } from "./output/rates-list-output.ts";
@@ -70,6 +83,7 @@ export { recombinationText } from "./output/recombination-output.ts";
 // requests: one function a command
 
 export { computeAbundances } from "./requests/abundances.ts";
+export { computeBudget } from "./requests/budget.ts";
 export type {
   AbundanceResults,
   Envelope,
@@ -79,6 +93,7 @@ export type {
   Provenance,
 } from "./requests/envelope.ts";
 export { computeHistory } from "./requests/history.ts";
+export { computeInfer, type InferKeys } from "./requests/infer.ts";
 export { modelFor as prepare } from "./requests/model-for.ts";
 export { computeRates, type RatesKeys, type RatesResults } from "./requests/rates.ts";
 export { type MakeRequest, makeRate } from "./requests/rates-make.ts";

@@ -2,10 +2,14 @@
 import type { AnyChart, Figure } from "../charts/figure.ts";
 import type { Model } from "../model/prepare.ts";
 import type { RecombinationResults } from "../model/recombination.ts";
+import type { BudgetResults } from "../output/budget-result.ts";
+import type { InferResults } from "../output/infer-result.ts";
 import type { Keys } from "../parameters/cosmology.ts";
 import { computeAbundances } from "../requests/abundances.ts";
+import { computeBudget } from "../requests/budget.ts";
 import type { AbundanceResults, Envelope, HistoryResults } from "../requests/envelope.ts";
 import { computeHistory } from "../requests/history.ts";
+import { computeInfer, type InferKeys } from "../requests/infer.ts";
 import { modelFor } from "../requests/model-for.ts";
 import { computeRates, type RatesKeys, type RatesResults } from "../requests/rates.ts";
 import { computeRecombination, type RecombinationKeys } from "../requests/recombination.ts";
@@ -38,6 +42,16 @@ export async function abundances(keys: Keys = {}, { rates }: RatesOption = {}): 
 /** The answer of the command `history`. @throws {InputError | CalculationError} */
 export async function history(keys: Keys = {}, { rates }: RatesOption = {}): Promise<Envelope<HistoryResults>> {
   return computeHistory(keys, loadRates(rates));
+}
+
+/** The answer of the command `budget`. @throws {InputError | CalculationError} */
+export async function budget(keys: Keys = {}, { rates }: RatesOption = {}): Promise<Envelope<BudgetResults>> {
+  return computeBudget(keys, loadRates(rates));
+}
+
+/** The answer of the command `infer`. @throws {InputError | CalculationError} */
+export async function infer(keys: InferKeys = {}, { rates }: RatesOption = {}): Promise<Envelope<InferResults>> {
+  return computeInfer(keys, loadRates(rates));
 }
 
 /** The answer of the command `recombination`. @throws {InputError | CalculationError} */

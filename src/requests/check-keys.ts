@@ -80,7 +80,7 @@ const OWN: Readonly<Record<string, Readonly<Record<string, Kind>>>> = {
   grid: { over: "texts", part: "text", check: "switch" },
   recombination: { z: "numbers", budget: "switch" },
   rates: { action: "text", reaction: "text", nuclide: "text", names: "texts", t9: "numbers" },
-  infer: { observed: "text", prior: "any", free: "any" },
+  infer: { observed: "text", prior: "text", free: "text" },
 };
 
 /**
