@@ -8,6 +8,10 @@ import { LOG10_ABUNDANCE, SCALE_ETA10 } from "./scales.generated.ts";
 const SHARE = { light: 10, tritium: 1e-3, other: 100 } as const;
 const LIGHT = new Set(["n", "p", "d", "he3", "he4", "li7", "be7"]);
 
+/** Tolerance of a reference run: at or below it every abundance above 1e-20 is followed relatively, whatever it costs. */
+export const REFERENCE_TOLERANCE = 3e-8;
+const REFERENCE_FLOOR = 1e-15;
+
 /**
  * atol_i = rtol x share x (final abundance at eta10, from a table over eta interpolated in logarithms).
  * Relative control far below the final abundance costs steps and gains nothing; a scale fixed for all eta would lose
@@ -15,6 +19,7 @@ const LIGHT = new Set(["n", "p", "d", "he3", "he4", "li7", "be7"]);
  * @param ids nuclides in the order of the abundance vector; unknown ones get 1e-30
  */
 export function absoluteTolerances(ids: readonly string[], eta10: number, rtol: number): Float64Array {
+  if (rtol <= REFERENCE_TOLERANCE) return new Float64Array(ids.length).fill(rtol * REFERENCE_FLOOR);
   const x = Math.log(eta10);
   let i = 0;
   while (i < SCALE_ETA10.length - 2 && eta10 > SCALE_ETA10[i + 1]) i++;
