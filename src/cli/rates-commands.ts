@@ -140,6 +140,7 @@ function addSpec(group: Command, spec: RatesSpec): void {
 export function addRatesCommands(program: Command): void {
   const group = program
     .command(RATES)
+    .configureHelp({ subcommandTerm: (command) => command.name() })
     .summary(SUMMARY)
     .description(`The rate evaluations behind the answer. Without a command: ${DEFAULT_RATES}.`);
   for (const spec of SPECS) addSpec(group, spec);
