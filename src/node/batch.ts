@@ -63,7 +63,7 @@ export async function runBatch(
 
   async function write(): Promise<void> {
     while (!ended.signal.aborted) {
-      const head = underWay.shift();
+      const head = underWay[0];
       if (head === undefined) {
         if (!reading) return;
         await change();
@@ -75,6 +75,7 @@ export async function runBatch(
         head.then(resolve, reject);
       });
       if (text === undefined || ended.signal.aborted) return;
+      underWay.shift();
       held -= text.length;
       if (!output.write(`${text}\n`)) await drained(output, ended.signal);
       answers++;
