@@ -67,27 +67,36 @@ const COMMANDS: readonly CommandSpec[] = [
 ];
 const DEFAULT_COMMAND = "abundances";
 
-function addCommand(program: Command, spec: CommandSpec): void {
+function addCommand(program: Command, spec: CommandSpec, withOptions: boolean): void {
   const command = program
     .command(spec.name, { isDefault: spec.name === DEFAULT_COMMAND })
     .summary(spec.summary)
     .description(`${spec.summary[0].toUpperCase()}${spec.summary.slice(1)}.`)
     .addHelpText("after", `\nExample:\n  ${spec.example}`)
     .action(async (options: Options) => (await spec.load()).run(options));
-  for (const option of spec.options()) command.addOption(option);
+  if (withOptions) for (const option of spec.options()) command.addOption(option);
 }
 
-/** The whole command line; errors are thrown, help and version go to `print`. */
-export function makeProgram(print: (text: string) => void): Command {
+/**
+ * The whole command line; errors are thrown, help and version go to `print`.
+ * @param only the command that will run: the others get no options, which takes time to make; all if left out
+ */
+export function makeProgram(print: (text: string) => void, only?: string): Command {
   const program = new Command("emberline")
     .description("Big Bang nucleosynthesis and the thermal history of the early Universe.")
     .version(VERSION)
     .exitOverride()
     .configureOutput({ writeOut: print, writeErr: () => {} })
     .addHelpText("after", `\nWithout a command: ${DEFAULT_COMMAND} of the default cosmology.`);
-  for (const spec of COMMANDS) addCommand(program, spec);
+  for (const spec of COMMANDS) addCommand(program, spec, only === undefined || spec.name === only);
   addRatesCommands(program);
   return program;
+}
+
+/** The command that a command line asks for. */
+function commandOf(args: readonly string[]): string {
+  const word = args[0] === "help" ? args[1] : args[0];
+  return word === undefined || word.startsWith("-") ? DEFAULT_COMMAND : word;
 }
 
 /** Commander takes a stray word for an argument of the default command; here it is an unknown command. */
@@ -142,7 +151,7 @@ export async function main(args: readonly string[]): Promise<number> {
   const printed: string[] = [];
   try {
     requireKnownCommand(args);
-    await makeProgram((text) => printed.push(text)).parseAsync(spellRates(args), { from: "user" });
+    await makeProgram((text) => printed.push(text), commandOf(args)).parseAsync(spellRates(args), { from: "user" });
     return 0;
   } catch (error) {
     if (error instanceof CommanderError && error.exitCode === 0) {
