@@ -19,7 +19,7 @@ import {
   runNetwork,
   type Stepping,
 } from "../nucleosynthesis/run.ts";
-import { variedTable } from "../nucleosynthesis/vary.ts";
+import { splitVariations } from "../nucleosynthesis/vary.ts";
 import { InputError } from "../numerics/check.ts";
 import { type ExpressionFunction, trivialExpression } from "../numerics/expression.ts";
 import { notAKnotSpline } from "../numerics/interpolate.ts";
@@ -348,7 +348,7 @@ export function applyVariations(
 ): RunInputs {
   const reactions = ctx.data.reactions.length;
   const extra = p.omegaBSigma > 0 ? variations[reactions + 1] : 0;
-  const varied = variedTable(ctx, variations.subarray(1, reactions + 1), inputs.factors as Float64Array);
+  const varied = splitVariations(ctx, variations.subarray(1, reactions + 1), inputs.factors as Float64Array);
   return {
     ...inputs,
     ...varied,

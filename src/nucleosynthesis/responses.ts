@@ -4,7 +4,7 @@ import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { FluxTable } from "./flux-table.ts";
 import { marchAdaptively } from "./march-run.ts";
 import { addCounts, fluxScale, initialAbundances, type RunContext, type RunInputs, tolerances } from "./run.ts";
-import { lnUncertainty } from "./vary.ts";
+import { lnUncertainty, variedTable } from "./vary.ts";
 
 /** Derivatives d ln X of each quantity X; reactions in the order of the compiled network, n <-> p first. */
 export interface Responses {
@@ -40,7 +40,7 @@ export function computeResponses(
   weights: readonly ReactionWeight[] = [],
 ): Responses {
   const { compiled } = context.data;
-  const table = inputs.table ?? context.table;
+  const table = variedTable(inputs.table ?? context.table, inputs.variations);
   const scale = fluxScale(compiled, table, inputs);
   const options = tolerances(context.data, { ...inputs, method: "rodas4" });
   const start = initialAbundances(context, inputs);

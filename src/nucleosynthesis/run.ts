@@ -14,6 +14,7 @@ import { type FluxTable, resample } from "./flux-table.ts";
 import { marchAdaptively } from "./march-run.ts";
 import { type NetworkData, WEAK_REACTION } from "./network-data.ts";
 import { marchStored, SEQUENCE_RANGE } from "./stored-steps.ts";
+import { type Variation, variedTable } from "./vary.ts";
 
 /** Temperature where n <-> p starts from its equilibrium [MeV]. */
 export const WEAK_START_MEV = 10;
@@ -49,7 +50,9 @@ export interface RunInputs {
   readonly method?: "rodas4" | "rodas5p";
   /** True: choose steps by their error even where a stored sequence would serve. */
   readonly adaptive?: boolean;
-  /** Table with some columns varied, instead of the context's. */
+  /** Rates varied by f_u(T9)^p where f_u changes with temperature; constant ones are among the factors. */
+  readonly variations?: readonly Variation[];
+  /** A flux table of the caller's instead of the context's; steps are then chosen adaptively. */
   readonly table?: FluxTable;
 }
 
@@ -265,13 +268,15 @@ export function runNetwork(context: RunContext, inputs: RunInputs): NuclearRun {
     const kernels = context.kernels();
     if (mayUseSequence(context, inputs)) {
       const Y = start.Y.slice();
-      const counts = marchStored(kernels, slots, table, Y, scale, eta10, options.rtol, atol);
+      const counts = marchStored(kernels, slots, table, Y, scale, eta10, options.rtol, atol, inputs.variations);
       if (counts) return { Y, counts: addCounts(start.counts, counts), stepping: "stored" };
     }
-    const counts = marchAdaptively(kernels, slots, table, start.Y, scale, eta10, options.rtol, atol);
+    const varied = variedTable(table, inputs.variations);
+    const counts = marchAdaptively(kernels, slots, varied, start.Y, scale, eta10, options.rtol, atol);
     return { Y: start.Y, counts: addCounts(start.counts, counts), stepping: "adaptive" };
   }
-  const system = networkSystem(context.data.compiled, context.kernels(), table, inputs);
+  const varied = variedTable(table, inputs.variations);
+  const system = networkSystem(context.data.compiled, context.kernels(), varied, inputs);
   const end = table.start + table.step * table.intervals;
   const stepper = new StiffStepper(system, table.start, start.Y, end, options);
   while (!stepper.done) stepper.step();
@@ -292,7 +297,7 @@ const SHAPING = new Set([
 const SHAPING_FACTOR = 1.3;
 const OTHER_FACTOR = 100;
 
-/** The stored sequence serves the default tolerance and method on an unvaried table, in its range of eta and rates. */
+/** The stored sequence serves the default tolerance and method in its range of eta and rates. */
 function mayUseSequence(
   { data }: RunContext,
   { tolerance, method, table, eta10, adaptive, factors }: RunInputs,

@@ -4,6 +4,7 @@ import { createMarch, type March, STAGE_POINTS, type StepRows } from "../network
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { FluxTable } from "./flux-table.ts";
 import { STEP_SEQUENCE } from "./steps.generated.ts";
+import { lnUncertaintyAt, type Variation } from "./vary.ts";
 
 /** Range of eta10 over which the sequence was tuned and checked; outside it steps are chosen adaptively. */
 export const SEQUENCE_RANGE = { min: 1, max: 20 } as const;
@@ -39,6 +40,49 @@ function rowsOf(table: FluxTable, nodes: ArrayLike<number>): StoredRows {
   return made;
 }
 
+const scratch = new WeakMap<StoredRows, Float64Array>();
+
+/** Rows with the fluxes of varied reactions multiplied by f_u(T9)^p; the buffer is reused by the next call. */
+function variedRows(
+  table: FluxTable,
+  nodes: ArrayLike<number>,
+  plain: StoredRows,
+  variations: readonly Variation[],
+): StoredRows {
+  let rows = scratch.get(plain);
+  if (!rows) {
+    rows = plain.rows.slice();
+    scratch.set(plain, rows);
+  } else rows.set(plain.rows);
+  const { width } = plain;
+  const points = [STAGE_POINTS[1], STAGE_POINTS[2], STAGE_POINTS[3], 1];
+  for (const { reaction, p, lnF } of variations) {
+    const f = 2 * (reaction + 1);
+    const first = lnUncertaintyAt(table, lnF, nodes[0]);
+    let factor = Math.exp(p * first.ln);
+    let slope = p * first.slope;
+    rows[f] *= factor;
+    rows[f + 1] *= factor;
+    // Row where the coefficients at the start of the step stand.
+    let start = 0;
+    for (let k = 0, at = width; k + 1 < nodes.length; k++, at += 5 * width) {
+      const sloping = at + 4 * width;
+      rows[sloping + f] = factor * rows[sloping + f] + slope * rows[start + f];
+      rows[sloping + f + 1] = factor * rows[sloping + f + 1] + slope * rows[start + f + 1];
+      const h = nodes[k + 1] - nodes[k];
+      for (let i = 0; i < 4; i++) {
+        const here = lnUncertaintyAt(table, lnF, nodes[k] + points[i] * h);
+        factor = Math.exp(p * here.ln);
+        slope = p * here.slope;
+        rows[at + i * width + f] *= factor;
+        rows[at + i * width + f + 1] *= factor;
+      }
+      start = at + 3 * width;
+    }
+  }
+  return { width, rows };
+}
+
 interface Workspace {
   readonly march: March;
   readonly rows: { -readonly [K in keyof StepRows]: Float64Array };
@@ -61,6 +105,7 @@ const nodesOf = new WeakMap<FluxTable, Float64Array>();
  * where it was checked, so that a run outside its range is noticed.
  * @param y abundances at the start, advanced in place; of no use if null is returned
  * @param rtol,atol the scale of the error estimates (those of the default tolerance)
+ * @param variations rates varied by an f_u that changes with temperature
  * @returns counts, or null if an estimate is too large: integrate adaptively instead
  */
 export function marchStored(
@@ -72,6 +117,7 @@ export function marchStored(
   eta10: number,
   rtol: number,
   atol: Float64Array,
+  variations?: readonly Variation[],
   limits: ArrayLike<number> = STEP_SEQUENCE.limits,
   seen?: (step: number, estimate: number) => void,
 ): SolverCounts | null {
@@ -80,7 +126,8 @@ export function marchStored(
     nodes = sequenceNodes(table);
     nodesOf.set(table, nodes);
   }
-  const source = rowsOf(table, nodes);
+  const plain = rowsOf(table, nodes);
+  const source = variations ? variedRows(table, nodes, plain, variations) : plain;
   let work = workspaces.get(kernels);
   if (!work) {
     const row = () => new Float64Array(source.width);

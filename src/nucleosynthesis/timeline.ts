@@ -17,6 +17,7 @@ import {
   WEAK_NETWORK,
   WEAK_START_MEV,
 } from "./run.ts";
+import { variedTable } from "./vary.ts";
 
 /** Output points a decade of temperature; 10, 1, 0.1 and 0.01 MeV are among them. */
 export const POINTS_PER_DECADE = 100;
@@ -110,7 +111,12 @@ export function computeTimeline(context: RunContext, inputs: RunInputs): Timelin
     state[index("p")] = early.y[1];
     Y.push(state);
   }
-  const system: StiffSystem = networkSystem(data.compiled, context.kernels(), inputs.table ?? table, inputs);
+  const system: StiffSystem = networkSystem(
+    data.compiled,
+    context.kernels(),
+    variedTable(table, inputs.variations),
+    inputs,
+  );
   const end = table.start + table.step * table.intervals;
   const late = new StiffStepper(system, sStart, initialAbundances(context, inputs).Y, end, {
     ...tolerances(data, inputs),

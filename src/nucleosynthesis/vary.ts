@@ -35,37 +35,59 @@ export function lnUncertainty(table: FluxTable, reaction: NetworkReaction, r: nu
   return made;
 }
 
+/** A rate varied by f_u(T9)^p whose ln f_u changes with temperature. */
+export interface Variation {
+  /** Index among the reactions of the network (n <-> p not counted). */
+  readonly reaction: number;
+  readonly p: number;
+  readonly lnF: LnUncertainty;
+}
+
 /**
- * Factors and, where an uncertainty depends on temperature, a table with its columns varied.
+ * Splits variations into constant factors and those that depend on temperature.
  * @param variations p of each reaction (n <-> p not included)
  * @param factors constant factors already asked for, n <-> p first
  */
-export function variedTable(
+export function splitVariations(
   context: RunContext,
   variations: ArrayLike<number>,
   factors: Float64Array,
-): { factors: Float64Array; table?: FluxTable } {
+): { factors: Float64Array; variations?: readonly Variation[] } {
   const { data, table } = context;
-  const varied = factors.slice();
-  let copy: FluxTable | undefined;
-  const count = table.intervals + 1;
+  const all = factors.slice();
+  const changing: Variation[] = [];
   for (let r = 0; r < data.reactions.length; r++) {
     const p = variations[r];
     if (p === 0) continue;
-    const ln = lnUncertainty(table, data.reactions[r], r);
-    if (ln.constant) {
-      varied[r + 1] *= Math.exp(p * ln.value[0]);
-      continue;
-    }
-    copy ??= table.copy();
-    const factor = new Float64Array(count);
-    const slope = new Float64Array(count);
-    for (let i = 0; i < count; i++) {
-      factor[i] = Math.exp(p * ln.value[i]);
-      slope[i] = p * ln.slope[i];
-    }
-    copy.multiplyColumn(2 * (r + 1), factor, slope);
-    copy.multiplyColumn(2 * (r + 1) + 1, factor, slope);
+    const lnF = lnUncertainty(table, data.reactions[r], r);
+    if (lnF.constant) all[r + 1] *= Math.exp(p * lnF.value[0]);
+    else changing.push({ reaction: r, p, lnF });
   }
-  return copy ? { factors: varied, table: copy } : { factors: varied };
+  return changing.length > 0 ? { factors: all, variations: changing } : { factors: all };
+}
+
+/** A copy of a table with the columns of varied reactions multiplied by f_u(T9)^p. */
+export function variedTable(table: FluxTable, variations: readonly Variation[] | undefined): FluxTable {
+  if (!variations) return table;
+  const copy = table.copy();
+  const count = table.intervals + 1;
+  const factor = new Float64Array(count);
+  const slope = new Float64Array(count);
+  for (const { reaction, p, lnF } of variations) {
+    for (let i = 0; i < count; i++) {
+      factor[i] = Math.exp(p * lnF.value[i]);
+      slope[i] = p * lnF.slope[i];
+    }
+    copy.multiplyColumn(2 * (reaction + 1), factor, slope);
+    copy.multiplyColumn(2 * (reaction + 1) + 1, factor, slope);
+  }
+  return copy;
+}
+
+/** ln f_u and its slope in s at any s, between the nodes of a table. */
+export function lnUncertaintyAt(table: FluxTable, { value }: LnUncertainty, s: number): { ln: number; slope: number } {
+  const position = Math.min(Math.max((s - table.start) / table.step, 0), table.intervals - 1e-9);
+  const i = Math.floor(position);
+  const rise = value[i + 1] - value[i];
+  return { ln: value[i] + (position - i) * rise, slope: rise / table.step };
 }

@@ -72,7 +72,7 @@ function assess({ context, kernels, cases, slots }: Setting, nodes: number[], es
   for (const { eta10, start, exact, scale, atol } of cases) {
     const y = start.slice();
     const unlimited = nodes.map(() => Number.MAX_VALUE);
-    const done = marchStored(kernels, slots, table, y, scale, eta10, RTOL, atol, unlimited, (k, e) => {
+    const done = marchStored(kernels, slots, table, y, scale, eta10, RTOL, atol, undefined, unlimited, (k, e) => {
       if (estimates) estimates[k] = Math.max(estimates[k], e);
     });
     if (!done) return 1e9;

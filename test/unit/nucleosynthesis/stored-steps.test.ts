@@ -1,6 +1,6 @@
 /** The stored sequence of steps: accurate in its range, noticed and left outside it, and its counts. */
 import { describe, expect, test } from "vitest";
-import { prepareModel } from "../../../src/model/prepare.ts";
+import { applyVariations, errorSources, prepareModel } from "../../../src/model/prepare.ts";
 import { loadRates } from "../../../src/node/load-rates.ts";
 import type { Keys } from "../../../src/parameters/cosmology.ts";
 
@@ -73,3 +73,31 @@ test("steps of a run stay what they are", () => {
 
 /** Steps counted at eta10 = 0.5, adaptive, when the method was settled. */
 const ADAPTIVE = { twelve: 159, extended: 256 };
+
+test("a rate varied by an uncertainty that changes with temperature: stored rows equal adaptive steps to 2e-5", () => {
+  const model = prepareModel(loadRates(), { network: "twelve" });
+  const p = model.parameters();
+  const context = model.context(p);
+  const inputs = {
+    eta10: p.eta10,
+    tauN: p.tauN,
+    factors: new Float64Array(context.data.reactions.length + 1).fill(1),
+    tolerance: p.tolerance,
+  };
+  const variations = new Float64Array(errorSources(context, p));
+  context.data.reactions.forEach((reaction, r) => {
+    if (["be7-n_p-li7", "he3-d_p-he4", "t-d_n-he4"].includes(reaction.id)) variations[r + 1] = 3;
+  });
+  const varied = applyVariations(context, inputs, p, variations);
+  expect(varied.variations).toHaveLength(3);
+  const stored = model.evaluate(context, varied);
+  expect(stored.stepping).toBe("stored");
+  const tight = model.evaluate(context, { ...varied, tolerance: 1e-7 });
+  const plain = model.evaluate(context, inputs);
+  stored.names.forEach((name, i) => {
+    if (!FOUR.includes(name)) return;
+    expect(Math.abs(stored.values[i] / tight.values[i] - 1), name).toBeLessThan(2e-5);
+  });
+  // The variation is felt: 7Be(n,p) up by three standard deviations lowers 7Li by several per cent.
+  expect(stored.values[6] / plain.values[6]).toBeLessThan(0.97);
+});
