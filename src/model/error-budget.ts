@@ -6,7 +6,7 @@ import { addCounts, type RunContext, type RunInputs } from "../nucleosynthesis/r
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import { type CosmologyParameters, DEFAULTS, RANGES } from "../parameters/cosmology.ts";
 import { type CentralStep, centralSensitivities, relativeStep } from "../uncertainty/sensitivity.ts";
-import { linearErrors } from "./linear-errors.ts";
+import { largeErrorWarnings, linearErrors } from "./linear-errors.ts";
 import { applyVariations, type Estimate, errorSources, type Model, reported, scaleFactors } from "./prepare.ts";
 
 /** Share by which G, amount by which N_eff is moved to either side: these two change the background. */
@@ -38,6 +38,7 @@ export interface ErrorBudget {
   readonly sources: readonly ErrorSource[];
   readonly nEffComputed: number;
   readonly counts: SolverCounts;
+  readonly warnings: readonly string[];
 }
 
 /** The sources of error in the order of their variations: tau_n, each reaction of the network, omega_b if it has one. */
@@ -131,6 +132,7 @@ export function computeErrorBudget(
     sources: list,
     nEffComputed: context.history.nEffComputed,
     counts,
+    warnings: largeErrorWarnings(context, ["Yp", "dToH", "he3ToH", "li7ToH"], central.names, linear),
   };
 }
 

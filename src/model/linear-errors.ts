@@ -59,3 +59,38 @@ export function linearErrors(
   ];
   return { ...propagateFrom(central, rows), counts, responses };
 }
+
+/** Share of a variance, carried by rates whose error is no small change, above which the linear error is not to be trusted. */
+const LARGE_SHARE = 0.1;
+
+/**
+ * Warns of each quantity much of whose error comes from rates known to no better than a factor of 1.65: the error is then
+ * skew, and linear propagation misses its tail.
+ * @param names  quantities to look at; @param order names of the quantities of `linear`
+ */
+export function largeErrorWarnings(
+  context: RunContext,
+  names: readonly string[],
+  order: readonly string[],
+  { response, covariance }: Pick<LinearPropagation, "response" | "covariance">,
+): string[] {
+  return names.flatMap((name) => {
+    const x = order.indexOf(name);
+    const whole = covariance[x * order.length + x];
+    if (x < 0 || !(whole > 0)) return [];
+    const large = context.data.reactions
+      .map(({ id }, r) => ({
+        id,
+        largest: Math.max(...lnUncertainty(context.table, context.data.reactions[r], r).value),
+        share: response[r + 1][x] ** 2 / whole,
+      }))
+      .filter(({ largest }) => largest > LARGEST_SMALL_LN_F)
+      .sort((a, b) => b.share - a.share);
+    const share = large.reduce((sum, each) => sum + each.share, 0);
+    if (share < LARGE_SHARE) return [];
+    const { id, largest } = large[0];
+    return [
+      `${name}: ${(100 * share).toFixed(0)} % of its variance is of rates known to no better than a factor, first ${id} (a factor of ${Math.exp(largest).toPrecision(2)}); linear errors miss the tail, --samples shows it`,
+    ];
+  });
+}

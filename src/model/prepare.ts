@@ -32,12 +32,13 @@ import {
   resolveParameters,
 } from "../parameters/cosmology.ts";
 import { RECOMBINATION_SWITCH_NAMES } from "../recombination/switches.ts";
-import { standardNormals, summariseSamples } from "../uncertainty/monte-carlo.ts";
+import { planSamples, type SamplePlan } from "../uncertainty/monte-carlo.ts";
 import type { LinearPropagation } from "../uncertainty/propagation.ts";
 import type { WeakOptions } from "../weak/inputs.ts";
 import { tabulateWeakRates, WEAK_TABLE_SPACING, type WeakTable } from "../weak/table.ts";
 import { storedHistory, storedWeakTable } from "./default-tables.ts";
-import { linearErrors } from "./linear-errors.ts";
+import { largeErrorWarnings, linearErrors } from "./linear-errors.ts";
+import { computeSampleBlock, type SampleBlock, type SamplingReport, sampleBlocks, sampledErrors } from "./sampling.ts";
 
 export interface Estimate {
   readonly value: number;
@@ -58,6 +59,8 @@ export interface AbundanceRun {
   /** With linear errors: share of each abundance's variance due to rates whose uncertainty is not a published one. */
   readonly assumedVarianceShare?: Readonly<Partial<Record<AbundanceName, number>>>;
   readonly quantiles?: Readonly<Record<string, Readonly<Record<string, number>>>>;
+  /** With samples: their number, mean, and the error of each sigma. */
+  readonly sampling?: SamplingReport;
   /** Counts of all runs; `stepping` of the central one. */
   readonly solver: SolverCounts & { readonly tolerance: number; readonly stepping: Stepping };
   readonly warnings: readonly string[];
@@ -73,7 +76,16 @@ export interface Model {
   /** Parameters of the model with some keys replaced, completed and checked. */
   parameters(overrides?: Keys): CosmologyParameters;
   /** Abundances with the errors asked for by `errors`. Synchronous; throws InputError or CalculationError. */
-  abundances(overrides?: Keys, progress?: (done: number, total: number) => void): AbundanceRun;
+  abundances(
+    overrides?: Keys,
+    progress?: (done: number, total: number) => void,
+    /** All blocks of samples, where they were computed elsewhere. */
+    sampled?: readonly SampleBlock[],
+  ): AbundanceRun;
+  /** By what samples of these keys are drawn. */
+  samplePlan(overrides?: Keys): SamplePlan;
+  /** Samples `from` to `to` - 1 of a plan; the same numbers wherever they are computed. */
+  sampleBlock(overrides: Keys | undefined, plan: SamplePlan, from: number, to: number): SampleBlock;
   /** Last scattering and baryon drag; helium from the nucleosynthesis run of the same keys unless ypMass is given. */
   recombination(overrides?: Keys): RecombinationResults;
   /** The same with the history behind it. */
@@ -183,7 +195,45 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
     return runRecombination(mergeKeys(base, overrides), (of) => heliumMass({ ...of, without: early }));
   }
 
-  return {
+  const inputsOf = (ctx: RunContext, p: CosmologyParameters): RunInputs => ({
+    eta10: p.eta10,
+    tauN: p.tauN,
+    factors: scaleFactors(ctx.data, p.scales, library),
+    tolerance: p.tolerance,
+  });
+
+  function linearOf(
+    ctx: RunContext,
+    inputs: RunInputs,
+    p: CosmologyParameters,
+    central: readonly number[],
+    progress?: (done: number, total: number) => void,
+  ) {
+    const vary = (s: number, sign: 1 | -1) => {
+      const variations = new Float64Array(errorSources(ctx, p));
+      variations[s] = sign;
+      return evaluate(ctx, applyVariations(ctx, inputs, p, variations));
+    };
+    return linearErrors(ctx, inputs, p, central, (Y) => reported(ctx, Y), vary, progress);
+  }
+
+  function sampleBlock(overrides: Keys | undefined, plan: SamplePlan, from: number, to: number): SampleBlock {
+    const p = parameters(overrides);
+    const ctx = context(p);
+    const inputs = inputsOf(ctx, p);
+    return computeSampleBlock((v) => evaluate(ctx, applyVariations(ctx, inputs, p, v)), plan, from, to);
+  }
+
+  function sampleHere(overrides: Keys | undefined, samples: number, progress?: (done: number, total: number) => void) {
+    const blocks = sampleBlocks(samples);
+    const plan = model.samplePlan(overrides);
+    return blocks.map(({ from, to }) => {
+      progress?.(from, samples);
+      return sampleBlock(overrides, plan, from, to);
+    });
+  }
+
+  const model: Model = {
     library,
     parameters,
     selection,
@@ -191,16 +241,24 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
     evaluate,
     recombinationRun,
     recombination: (overrides) => recombinationResults(recombinationRun(overrides)),
-    abundances(overrides, progress) {
+    samplePlan(overrides) {
       const p = parameters(overrides);
       const ctx = context(p);
-      const factors = scaleFactors(ctx.data, p.scales, library);
-      const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
+      const inputs = inputsOf(ctx, p);
+      const linear = linearOf(ctx, inputs, p, evaluate(ctx, inputs).values);
+      return planSamples(p.seed, linear.response);
+    },
+    sampleBlock,
+    abundances(overrides, progress, sampled) {
+      const p = parameters(overrides);
+      const ctx = context(p);
+      const inputs = inputsOf(ctx, p);
       const central = evaluate(ctx, inputs);
       let counts = central.counts;
       const report = (
-        errors: Pick<AbundanceRun, "correlation" | "assumedVarianceShare" | "quantiles"> & {
+        errors: Pick<AbundanceRun, "correlation" | "assumedVarianceShare" | "quantiles" | "sampling"> & {
           sigma?: ArrayLike<number>;
+          warnings?: readonly string[];
         },
       ): AbundanceRun => ({
         abundances: Object.fromEntries(
@@ -213,54 +271,31 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
         ...(errors.correlation ? { correlation: errors.correlation } : {}),
         ...(errors.assumedVarianceShare ? { assumedVarianceShare: errors.assumedVarianceShare } : {}),
         ...(errors.quantiles ? { quantiles: errors.quantiles } : {}),
+        ...(errors.sampling ? { sampling: errors.sampling } : {}),
         solver: { ...counts, stepping: central.stepping, tolerance: p.tolerance },
-        warnings: validityWarnings(p),
+        warnings: [...validityWarnings(p), ...(errors.warnings ?? [])],
       });
       if (p.errors === "none") return report({});
-      const sources = errorSources(ctx, p);
-      const at = (variations: Float64Array) => {
-        const run = evaluate(ctx, applyVariations(ctx, inputs, p, variations));
-        counts = addCounts(counts, run.counts);
-        return run.values;
-      };
       if (p.errors === "linear") {
-        const linear = linearErrors(
-          ctx,
-          inputs,
-          p,
-          central.values,
-          (Y) => reported(ctx, Y),
-          (s, sign) => {
-            const variations = new Float64Array(sources);
-            variations[s] = sign;
-            return evaluate(ctx, applyVariations(ctx, inputs, p, variations));
-          },
-          progress,
-        );
+        const linear = linearOf(ctx, inputs, p, central.values, progress);
         counts = addCounts(counts, linear.counts);
         return report({
           sigma: linear.sigma,
           correlation: { order: central.names, matrix: linear.correlation },
           assumedVarianceShare: assumedShares(ctx, central.names, linear),
+          warnings: largeErrorWarnings(ctx, OBSERVED, central.names, linear),
         });
       }
-      if (p.samples < 2) throw new InputError("range", `samples = ${p.samples}: errors by sampling need at least 2`);
-      const samples = central.names.map(() => new Float64Array(p.samples));
-      for (let i = 0; i < p.samples; i++) {
-        progress?.(i, p.samples);
-        at(standardNormals(p.seed, i, sources)).forEach((x, k) => {
-          samples[k][i] = x;
-        });
-      }
-      const summary = summariseSamples(samples);
-      return report({
-        sigma: summary.sigma,
-        correlation: { order: central.names, matrix: summary.correlation },
-        quantiles: Object.fromEntries(central.names.map((name, i) => [name, summary.quantiles[i]])),
-      });
+      const blocks = sampled ?? sampleHere(overrides, p.samples, progress);
+      for (const block of blocks) counts = addCounts(counts, block.counts);
+      return report(sampledErrors(central.names, blocks));
     },
   };
+  return model;
 }
+
+/** Abundances that are observed: linear errors are checked for them. */
+const OBSERVED = ["Yp", "dToH", "he3ToH", "li7ToH"] as const;
 
 /** Weak rates over a whole thermal history. */
 export function tabulateOver(history: ThermalHistory, xiE: number, switches: WeakOptions): WeakTable {

@@ -70,6 +70,18 @@ function quantileLines(quantiles: AbundanceResults["quantiles"]): string[] {
   return ["", "Quantiles of the samples", ...alignColumns([head, ...rows], columns)];
 }
 
+/** How well samples know the errors that are quoted. */
+function samplingLines({ sampling, abundances }: AbundanceResults): string[] {
+  if (sampling === undefined) return [];
+  const known = OBSERVED.flatMap((name) => {
+    const { sigma } = abundances[name as AbundanceName] ?? {};
+    if (sigma === undefined || !(sigma > 0)) return [];
+    const share = (100 * sampling.sigmaError[name]) / sigma;
+    return [`${abundanceLabel(name)}\u00a0${share.toPrecision(1)}\u00a0%`];
+  });
+  return wrap(`${sampling.samples} samples know the errors quoted to ${known.join(", ")}.`, "  ");
+}
+
 /** Text of an `abundances` answer, at most 80 columns wide. */
 export function abundancesText(answer: Envelope<AbundanceResults>): string {
   const lines = [
@@ -78,6 +90,7 @@ export function abundancesText(answer: Envelope<AbundanceResults>): string {
     ...estimateLines(answer.results),
     ...correlationLines(answer.results.correlation),
     ...quantileLines(answer.results.quantiles),
+    ...samplingLines(answer.results),
     "",
     "Calculation",
     ...provenanceLines(answer),

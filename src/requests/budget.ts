@@ -22,7 +22,7 @@ export async function computeBudget(
 ): Promise<Envelope<BudgetResults>> {
   const model = await modelFor(keys, library);
   const parameters = model.parameters();
-  const { counts, ...results } = computeErrorBudget(model, parameters, (done, total) =>
+  const { counts, warnings, ...results } = computeErrorBudget(model, parameters, (done, total) =>
     progress?.(done / total, "runs of the error budget"),
   );
   return makeEnvelope(
@@ -31,6 +31,6 @@ export async function computeBudget(
     { ...results, observed: readObservations(library.files, DEFAULT_SET) },
     nucleosynthesisProvenance(model, parameters),
     { ...counts, tolerance: parameters.tolerance },
-    validityWarnings(parameters),
+    [...validityWarnings(parameters), ...warnings],
   );
 }

@@ -12,6 +12,7 @@ import { addCounts, type RunInputs } from "../nucleosynthesis/run.ts";
 import { CalculationError, InputError } from "../numerics/check.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { Keys } from "../parameters/cosmology.ts";
+import type { SamplePlan } from "../uncertainty/monte-carlo.ts";
 
 /** What is asked at one point. */
 export interface PointQuestion {
@@ -22,6 +23,8 @@ export interface PointQuestion {
   readonly values: boolean;
   /** Whether the responses to every source of error are wanted, as {@link linearErrors} finds them. */
   readonly linear?: boolean;
+  /** Samples `from` to `to` - 1 of a Monte Carlo; nothing else is answered then. */
+  readonly samples?: { readonly plan: SamplePlan; readonly from: number; readonly to: number };
   /** Whether the errors are those of the model's own error analysis (samples), one sigma an abundance. */
   readonly sigma?: boolean;
 }
@@ -32,6 +35,8 @@ export interface PointAnswer {
   readonly sigma?: readonly number[];
   /** responses[s][x] = d ln x/dp of source s, in the order of {@link applyVariations}; 0 where an abundance is 0. */
   readonly responses?: readonly (readonly number[])[];
+  /** samples[i][x] of the samples asked for. */
+  readonly samples?: readonly (readonly number[])[];
   readonly counts: SolverCounts;
   readonly warnings: readonly string[];
 }
@@ -52,6 +57,11 @@ export function answerPoint(model: Model, question: PointQuestion): PointAnswer 
 }
 
 function answer(model: Model, question: PointQuestion): PointAnswer {
+  if (question.samples !== undefined) {
+    const { plan, from, to } = question.samples;
+    const { values, counts } = model.sampleBlock(question.overrides, plan, from, to);
+    return { samples: values, counts, warnings: [] };
+  }
   const p = model.parameters(question.overrides);
   if (question.sigma === true) {
     const run = model.abundances(question.overrides);
