@@ -25,7 +25,7 @@ const COMMANDS: readonly CommandSpec[] = [
   {
     name: "abundances",
     summary: "light-element abundances of one cosmology, each with its theory error",
-    options: () => [...nucleosynthesisOptions(), ...errorOptions(), ...outputOptions()],
+    options: () => [...nucleosynthesisOptions(), ...errorOptions(), ...outputOptions(), ...resumeOptions()],
     example: "emberline abundances --omega-b 0.0224±0.0001 --tau-n 879.4 --network twelve",
     load: () => import("./commands/abundances.ts"),
   },
