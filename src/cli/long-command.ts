@@ -5,7 +5,7 @@ import { Interrupted, listenForInterrupt } from "../node/interrupt.ts";
 import { loadRates } from "../node/load-rates.ts";
 import { lockOutput } from "../node/lock.ts";
 import { makePool } from "../node/pool.ts";
-import { requireWritable } from "../node/write-file.ts";
+import { removeLeftovers, requireWritable } from "../node/write-file.ts";
 import { InputError } from "../numerics/check.ts";
 import { ratesDigest } from "../requests/rates-digest.ts";
 import type { TaskEngine } from "../requests/sweep.ts";
@@ -25,16 +25,20 @@ export async function longCommand(
   options: Options,
   run: (engine: TaskEngine) => Promise<void>,
 ): Promise<void> {
+  if (options.out !== undefined) await requireWritable(options.out);
   const out = regularTarget(options.out);
   const resume = options.resume === true;
   if (resume && out === undefined)
     throw new InputError("conflict", "--resume: needs --out FILE, beside which the checkpoint of the earlier run lies");
-  if (out !== undefined) await requireWritable(out);
   const library = loadRates(options.rates);
-  const unlock = out === undefined ? () => {} : await lockOutput(out);
   const interrupt = listenForInterrupt();
+  let unlock = () => {};
   let checkpoint: Checkpoint | undefined;
   try {
+    if (out !== undefined) {
+      unlock = await lockOutput(out);
+      await removeLeftovers(out);
+    }
     const keys = toKeys(options);
     const pool = makePool({
       jobs: options.jobs as number | undefined,

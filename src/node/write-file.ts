@@ -1,6 +1,6 @@
 /** Writes a file whole or not at all: a temporary file in the same folder, synchronised, then renamed. */
 import { constants } from "node:fs";
-import { access, open, realpath, rename, stat, unlink, writeFile } from "node:fs/promises";
+import { access, open, readdir, realpath, rename, stat, unlink, writeFile } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
 import { InputError } from "../numerics/check.ts";
 
@@ -44,6 +44,20 @@ export async function requireWritable(path: string): Promise<void> {
   }
 }
 
+/** What the names of a file's temporary files begin with. */
+function temporaryStem(path: string): string {
+  return `.${basename(path).slice(0, 200)}.`;
+}
+
+/** Removes temporary files of this output that killed runs left. Only for who has the output to himself. */
+export async function removeLeftovers(path: string): Promise<void> {
+  const folder = dirname(path);
+  const stem = temporaryStem(path);
+  for (const name of await readdir(folder))
+    if (name.startsWith(stem) && /^\d+\.part$/.test(name.slice(stem.length)))
+      await unlink(join(folder, name)).catch(() => undefined);
+}
+
 /**
  * Writes the whole content or leaves what was there. A device or pipe is written directly; a link keeps pointing.
  * @throws {InputError} if the file cannot be written; no temporary file remains
@@ -53,7 +67,7 @@ export async function writeWhole(path: string, content: string | Uint8Array | As
   const existing = await stat(path).catch(() => undefined);
   const direct = existing !== undefined && !existing.isFile();
   const final = existing === undefined || direct ? path : await realpath(path);
-  const target = direct ? path : join(dirname(final), `.${basename(final).slice(0, 200)}.${process.pid}.part`);
+  const target = direct ? path : join(dirname(final), `${temporaryStem(final)}${process.pid}.part`);
   let created = false;
   try {
     const file = await open(target, direct ? "w" : "wx", existing?.isFile() ? existing.mode & 0o777 : 0o666);

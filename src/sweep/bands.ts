@@ -39,14 +39,24 @@ export async function relativeErrors(
   const lines = linesThrough(plan, first, end);
   const found = new Map<number, Float64Array>();
   const known = lines.map(() => new Map<number, Responses>());
-  let open = lines.map((line) => evenly(line.points.length, FIRST_NODES));
+  // A short line is not interpolated: of it a part needs its own points only.
+  const isShort = (line: Line) => line.points.length < 2 * FIRST_NODES;
+  const inside = (point: number) => point >= first && point < end;
+  let open = lines.map((line) => {
+    const all = line.points.map((_, i) => i);
+    return isShort(line) ? all.filter((i) => inside(line.points[i])) : evenly(line.points.length, FIRST_NODES);
+  });
   for (let round = 0; open.some((nodes) => nodes.length > 0); round++) {
     const wanted = open.flatMap((nodes, l) => nodes.map((node) => ({ l, node, point: lines[l].points[node] })));
     const answers = await ask(wanted.map(({ point }) => point));
     const fresh = lines.map(() => new Map<number, Responses>());
     for (const [i, { l, node }] of wanted.entries()) fresh[l].set(node, answers[i]);
     open = lines.map((line, l) => {
-      const next = round === 0 ? gapsOf([...fresh[l].keys()]) : refine(line, known[l], fresh[l], width);
+      const next = isShort(line)
+        ? []
+        : round === 0
+          ? gapsOf([...fresh[l].keys()])
+          : refine(line, known[l], fresh[l], width);
       for (const [node, responses] of fresh[l]) known[l].set(node, responses);
       return next;
     });
@@ -54,7 +64,7 @@ export async function relativeErrors(
   lines.forEach((line, l) => {
     const sigma = interpolated(line, known[l], width);
     line.points.forEach((point, i) => {
-      if (point >= first && point < end) found.set(point, sigma(i));
+      if (inside(point)) found.set(point, sigma(i));
     });
   });
   return found;
