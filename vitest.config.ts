@@ -24,6 +24,7 @@ export default defineConfig({
     include: ["test/**/*.test.ts"],
     benchmark: { include: ["test/bench/**/*.bench.ts"] },
     testTimeout: 120_000,
+    hookTimeout: 120_000,
     maxWorkers: 2,
     reporters: ["default", counts],
   },
