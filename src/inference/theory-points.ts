@@ -12,11 +12,13 @@ export interface TheoryQuestion {
   readonly values: boolean;
   /** Whether the responses d ln X/dp to all sources of error are wanted, with the values. */
   readonly linear?: boolean;
+  /** Abundances of which the responses are wanted, in this order. */
+  readonly responding?: readonly AbundanceName[];
 }
 
 export interface TheoryAnswer {
   readonly values?: readonly number[];
-  /** responses[s][x] of all sources. */
+  /** responses[s][m] of all sources. */
   readonly responses?: readonly (readonly number[])[];
 }
 
@@ -75,13 +77,14 @@ export class TheoryPoints {
     const questions = list.map(({ x, linear: full }) => ({
       ...this.#question(x),
       values: true,
-      ...(full ? { linear: true } : {}),
+      ...(full ? { linear: true, responding: this.#abundances } : {}),
     }));
     const answers = await this.#ask(questions);
     list.forEach(({ x }, i) => {
       this.#values.set(name(x), this.#lnValues(answers[i], questions[i].where));
       const { responses } = answers[i];
-      if (responses) this.#responses.set(name(x), this.#chosen(responses));
+      const counted = responses?.map((row, s) => (s === this.#frame.freeSource ? row.map(() => 0) : row));
+      if (counted) this.#responses.set(name(x), counted);
     });
   }
 
@@ -110,11 +113,6 @@ export class TheoryPoints {
         throw new CalculationError("abundance", `${abundance} = ${x} at ${where}: it has no logarithm to compare`);
       return Math.log(x);
     });
-  }
-
-  #chosen(responses: readonly (readonly number[])[]): number[][] {
-    const columns = this.#abundances.map((abundance) => this.#frame.names.indexOf(abundance));
-    return responses.map((row, s) => columns.map((column) => (s === this.#frame.freeSource ? 0 : row[column])));
   }
 }
 

@@ -8,6 +8,7 @@ import {
   scaleFactors,
   validityWarnings,
 } from "../model/prepare.ts";
+import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
 import { addCounts, type RunInputs } from "../nucleosynthesis/run.ts";
 import { CalculationError, InputError } from "../numerics/check.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
@@ -23,6 +24,8 @@ export interface PointQuestion {
   readonly values: boolean;
   /** Whether the responses to every source of error are wanted, as {@link linearErrors} finds them. */
   readonly linear?: boolean;
+  /** Abundances of which the responses are wanted, in this order; all without. Each costs its share of the adjoint. */
+  readonly responding?: readonly AbundanceName[];
   /** Samples `from` to `to` - 1 of a Monte Carlo; nothing else is answered then. */
   readonly samples?: { readonly plan: SamplePlan; readonly from: number; readonly to: number };
   /** Whether the errors are those of the model's own error analysis (samples), one sigma an abundance. */
@@ -76,19 +79,22 @@ function answer(model: Model, question: PointQuestion): PointAnswer {
   const context = model.context(p);
   const factors = scaleFactors(context.data, p.scales, model.library);
   const inputs: RunInputs = { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance };
-  const { values, counts } = model.evaluate(context, inputs);
+  const { names, values, counts } = model.evaluate(context, inputs);
   const warnings = validityWarnings(p);
   if (question.linear !== true) return { values, counts, warnings };
+  const columns = (question.responding ?? names).map((name) => names.indexOf(name));
+  const chosen = (all: readonly number[]) => columns.map((x) => all[x]);
   const linear = linearErrors(
     context,
     inputs,
     p,
-    values,
-    (Y) => reported(context, Y),
+    chosen(values),
+    (Y) => chosen(reported(context, Y)),
     (source, sign) => {
       const variations = new Float64Array(errorSources(context, p));
       variations[source] = sign;
-      return model.evaluate(context, applyVariations(context, inputs, p, variations));
+      const run = model.evaluate(context, applyVariations(context, inputs, p, variations));
+      return { values: chosen(run.values), counts: run.counts };
     },
   );
   return {
