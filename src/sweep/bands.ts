@@ -12,7 +12,7 @@ const FIRST_NODES = 7;
  * Difference between a band and the same band interpolated from nodes twice as far apart, relative. Cubic
  * interpolation errs 16 times less at half the spacing, so the band that is kept errs below 0.4 %.
  */
-const HALVING_DIFFERENCE = 0.06;
+const HALVING_DIFFERENCE = 0.045;
 
 /** One line of points along the longest axis: numbers of the points, by rising coordinate. */
 interface Line {
