@@ -66,6 +66,7 @@ export { inferFigure } from "./charts/infer.ts";
 export { compareFigure } from "./charts/rates-compare.ts";
 export { rateFigure } from "./charts/rates-show.ts";
 export { recombinationFigure } from "./charts/recombination.ts";
+export { scanFigure } from "./charts/scan.ts";
 export { abundancesTable, abundancesText } from "./output/abundances-output.ts";
 export { budgetTable, budgetText } from "./output/budget-output.ts";
 export type { BudgetResults } from "./output/budget-result.ts";
@@ -79,6 +80,9 @@ export { ratesCompareText } from "./output/rates-compare-output.ts";
 export { ratesListText } from "./output/rates-list-output.ts";
 export { ratesShowText } from "./output/rates-show-output.ts";
 export { recombinationText } from "./output/recombination-output.ts";
+export { scanText } from "./output/scan-output.ts";
+export type { GridResults, ScanResults } from "./output/sweep-result.ts";
+export { type ReportCharts, type ReportData, reportPage } from "./report/report.ts";
 
 // requests: one function a command
 
@@ -92,11 +96,15 @@ export type {
   Progress,
   Provenance,
 } from "./requests/envelope.ts";
+export { computeGrid, type GridKeys } from "./requests/grid.ts";
 export { computeHistory } from "./requests/history.ts";
 export { computeInfer, type InferKeys } from "./requests/infer.ts";
 export { modelFor as prepare } from "./requests/model-for.ts";
 export { computeRates, type RatesKeys, type RatesResults } from "./requests/rates.ts";
 export { type MakeRequest, makeRate } from "./requests/rates-make.ts";
 export { computeRecombination, type RecombinationKeys } from "./requests/recombination.ts";
+export { computeReport } from "./requests/report.ts";
+export { computeScan } from "./requests/scan.ts";
+export type { SweepKeys, SweepOptions } from "./requests/sweep.ts";
 
 export { VERSION } from "./version.ts";

@@ -4,15 +4,20 @@ import type { Model } from "../model/prepare.ts";
 import type { RecombinationResults } from "../model/recombination.ts";
 import type { BudgetResults } from "../output/budget-result.ts";
 import type { InferResults } from "../output/infer-result.ts";
+import type { GridResults, ScanResults } from "../output/sweep-result.ts";
 import type { Keys } from "../parameters/cosmology.ts";
 import { computeAbundances } from "../requests/abundances.ts";
 import { computeBudget } from "../requests/budget.ts";
 import type { AbundanceResults, Envelope, HistoryResults } from "../requests/envelope.ts";
+import { computeGrid, type GridKeys } from "../requests/grid.ts";
 import { computeHistory } from "../requests/history.ts";
 import { computeInfer, type InferKeys } from "../requests/infer.ts";
 import { modelFor } from "../requests/model-for.ts";
 import { computeRates, type RatesKeys, type RatesResults } from "../requests/rates.ts";
 import { computeRecombination, type RecombinationKeys } from "../requests/recombination.ts";
+import { computeReport } from "../requests/report.ts";
+import { computeScan } from "../requests/scan.ts";
+import type { SweepKeys } from "../requests/sweep.ts";
 import { loadRates } from "./load-rates.ts";
 
 export * from "../index.ts";
@@ -23,6 +28,11 @@ export { writeWhole } from "./write-file.ts";
 export interface RatesOption {
   /** A folder laid out as rates/, whole or holding only the files that differ. */
   readonly rates?: string;
+}
+
+/** How a report names its origin. */
+export interface ReportOption extends RatesOption {
+  readonly command?: string;
 }
 
 /**
@@ -68,6 +78,27 @@ export async function rates(
   { rates: folder }: RatesOption = {},
 ): Promise<Envelope<RatesResults>> {
   return computeRates(keys, loadRates(folder));
+}
+
+/** The answer of the command `scan`, in this thread. @throws {InputError | CalculationError} */
+export async function scan(keys: SweepKeys, { rates }: RatesOption = {}): Promise<Envelope<ScanResults>> {
+  return computeScan(keys, loadRates(rates));
+}
+
+/** The answer of the command `grid`, in this thread. @throws {InputError | CalculationError} */
+export async function grid(keys: GridKeys, { rates }: RatesOption = {}): Promise<Envelope<GridResults>> {
+  return computeGrid(keys, loadRates(rates));
+}
+
+/**
+ * The page of the command `report`, as HTML.
+ * @param command what the page says that it was made with
+ * @throws {InputError | CalculationError}
+ */
+export async function report(keys: Keys = {}, { rates, command = "emberline report" }: ReportOption = {}) {
+  const library = loadRates(rates);
+  const data = await computeReport(keys, library);
+  return (await import("./render-report.ts")).renderReport({ ...data, command }, library);
 }
 
 /**

@@ -2,7 +2,6 @@
 import type { RateLibrary } from "../nuclear/library.ts";
 import type { Keys } from "../parameters/cosmology.ts";
 import { answerPoint as answerPointOf, type PointAnswer, type PointQuestion } from "../sweep/point.ts";
-import { answerLine } from "./batch-line.ts";
 import type { Kept } from "./dispatch.ts";
 import { ModelCache } from "./model-cache.ts";
 
@@ -48,5 +47,7 @@ export function taskAnswerer(library: RateLibrary): TaskAnswerer {
   const models = new ModelCache(library);
   const answerPoint = pointAnswerer(library, models);
   const kept: Kept = { library, models, answerPoint };
-  return ((task: Task) => (task.kind === "point" ? answerPoint(task) : answerLine(task, kept))) as TaskAnswerer;
+  // The requests of all commands are loaded with the first line: points need none of them.
+  const line = async (task: LineTask) => (await import("./batch-line.ts")).answerLine(task, kept);
+  return ((task: Task) => (task.kind === "point" ? answerPoint(task) : line(task))) as TaskAnswerer;
 }

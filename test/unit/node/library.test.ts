@@ -1,7 +1,7 @@
 // The library as a user of the package calls it.
 import { expect, test } from "vitest";
 import * as browser from "../../../src/index.ts";
-import { abundances, InputError, loadRates, prepare } from "../../../src/node/index.ts";
+import { abundances, grid, InputError, loadRates, prepare, report, scan } from "../../../src/node/index.ts";
 
 const keys = { network: "twelve", errors: "none" } as const;
 
@@ -27,4 +27,12 @@ test("a bad key is an InputError with a code", async () => {
   await expect(prepare({ ...keys, network: "nosuch" }).then((model) => model.abundances())).rejects.toMatchObject({
     code: expect.stringMatching(/\w/),
   });
+});
+
+test("scan, grid and report have a function each", async () => {
+  const table = (await scan({ ...keys, over: ["eta10=5,6"] })).results.table;
+  const single = await abundances({ ...keys, eta10: 6 });
+  expect(table.rows[1][1]).toBe(single.results.abundances.Yp?.value);
+  expect((await grid({ ...keys, over: ["omegaB=0.02,0.03", "nEff=3,4"] })).results.table.rows.length).toBe(4);
+  expect(await report(keys, { command: "made <here>" })).toContain("<code>made &lt;here&gt;</code>");
 });
