@@ -48,7 +48,7 @@ export function progressLine(quiet: boolean): { readonly report?: Progress; read
       if (now - last < INTERVAL_MS && share < 1) return;
       last = now;
       shown = true;
-      const width = process.stderr.columns ?? 80;
+      const width = process.stderr.columns || 80;
       const text = progressText(share, what, total, share - stage.share, now - stage.at);
       process.stderr.write(`\r\x1b[K${text.slice(0, width - 1)}`);
     },

@@ -4,6 +4,7 @@ import { InputError } from "../numerics/check.ts";
 import { lineError } from "../requests/batch-line.ts";
 import { type InputLine, inputLines, LONGEST_LINE } from "./input-lines.ts";
 import type { TaskStream } from "./task-stream.ts";
+import { refusal } from "./write-file.ts";
 
 /** What became of a batch. */
 export interface BatchOutcome {
@@ -50,7 +51,7 @@ export async function runBatch(
   signal.addEventListener("abort", stop, { once: true });
   const onError = (error: NodeJS.ErrnoException) => {
     if (error.code === "EPIPE" || error.code === "ERR_STREAM_DESTROYED") closed = true;
-    else failure ??= error;
+    else failure ??= refusal("standard output", error);
     stop();
   };
   // Stays: an output that is gone may say so once more after the end.
