@@ -164,8 +164,13 @@ function shift(a: ParameterEstimate, b: ParameterEstimate): number {
   return Math.max(...ends.map((end) => Math.abs(a[end] - b[end]))) / a.sigma;
 }
 
+/** Rise of ln posterior below which a step is none, and most rounds of steps: a curved ridge is not followed for ever. */
+const LEAST_RISE = 1e-9;
+const MOST_ROUNDS = 300;
+
 /**
- * Highest point near a start, by steps along all diagonals that halve when none leads up.
+ * Highest point near a start, by steps along all diagonals that halve when none leads up. Where the posterior is a long
+ * ridge, a point on it.
  * @param steps first step along each axis
  */
 export function climb(
@@ -180,14 +185,14 @@ export function climb(
     (rows) => rows.flatMap((row) => [-1, 0, 1].map((s) => [...row, s])),
     [[]],
   );
-  for (let scale = 1; scale > 1e-4; ) {
+  for (let scale = 1, round = 0; scale > 1e-4 && round < MOST_ROUNDS; round++) {
     let moved = false;
     for (const direction of directions) {
       const next = here.map((x, d) =>
         Math.min(priors[d].max, Math.max(priors[d].min, x + scale * steps[d] * direction[d])),
       );
       const found = ln(next);
-      if (found <= height) continue;
+      if (!(found > height + LEAST_RISE)) continue;
       here.set(next);
       height = found;
       moved = true;

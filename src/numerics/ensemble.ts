@@ -11,8 +11,10 @@ export interface EnsembleOptions {
   readonly walkers?: number;
   /** Steps of every walker at most. */
   readonly maxSteps?: number;
-  /** Steps are enough when they are this many autocorrelation times of every variable. */
+  /** Steps are enough when they are this many autocorrelation times of every variable ... */
   readonly lengths?: number;
+  /** ... or this many at `maxSteps`; the number of independent samples says how good they are. */
+  readonly leastLengths?: number;
 }
 
 export interface Ensemble {
@@ -39,7 +41,7 @@ const JUDGED_WALKERS = 16;
 /**
  * Samples a density by stretch moves: walker k of one half moves to y = x_j + z (x_k - x_j), x_j of the other half,
  * z from g(z) ~ 1/sqrt(z) on [1/a, a], accepted with probability min(1, z^(n-1) p(y)/p(x)). Runs until it is `lengths`
- * autocorrelation times long, of which the first fifth is thrown away.
+ * autocorrelation times long (or `leastLengths` when the steps are used up); the first fifth is thrown away.
  * @param starts one starting point a walker; spread over the region, none of density zero
  * @throws {CalculationError} if `maxSteps` is not enough, or a start has density zero
  * @see Goodman & Weare 2010, Comm. App. Math. Comp. Sci. 5, 65
@@ -47,7 +49,7 @@ const JUDGED_WALKERS = 16;
 export function sampleEnsemble(
   lnDensity: LnDensity,
   starts: readonly ArrayLike<number>[],
-  { seed, walkers = 64, maxSteps = 40_000, lengths = 60 }: EnsembleOptions,
+  { seed, walkers = 64, maxSteps = 16_000, lengths = 60, leastLengths = 20 }: EnsembleOptions,
 ): Ensemble {
   const n = starts[0].length;
   if (walkers % 2 !== 0 || walkers < 2 * n || starts.length !== walkers)
@@ -87,7 +89,7 @@ export function sampleEnsemble(
     const kept = chain.map((rows) => rows.slice(burn));
     const autocorrelation = kept.map(autocorrelationTime);
     const longest = Math.max(...autocorrelation);
-    if (step < lengths * longest) continue;
+    if (step < (step === maxSteps ? leastLengths : lengths) * longest) continue;
     return {
       samples: kept.map((rows) => Float64Array.from(rows.flatMap((row) => [...row]))),
       best,
