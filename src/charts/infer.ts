@@ -82,6 +82,11 @@ function interval(lower: number, upper: number, best: number): Record<string, An
   };
 }
 
+/** The chart with every point drawn: those of one column of pixels are merged in lines without tension. */
+function everyPoint(chart: LineChart): LineChart {
+  return { ...chart, data: { datasets: chart.data.datasets.map((set) => ({ ...set, tension: 1e-9 })) } };
+}
+
 /** Highest eta10 shown: beyond it no element has a likelihood worth showing. */
 const TOP_ETA = 12;
 
@@ -107,7 +112,7 @@ function elementsChart(result: InferenceToDraw): LineChart {
     }),
   );
   const { eta10: inferred } = result.parameters;
-  return linePanel(
+  const chart = linePanel(
     "Likelihood of each element (dashed: not fitted)",
     curves,
     { x: linearAxis(AXIS_TITLES.eta10, x, 1), y: linearAxis("likelihood / its highest", { min: 0, max: 1.12 }, 0.2) },
@@ -118,6 +123,7 @@ function elementsChart(result: InferenceToDraw): LineChart {
       ),
     },
   );
+  return everyPoint(chart);
 }
 
 function contoursChart(result: InferenceToDraw): LineChart {
@@ -192,13 +198,11 @@ function contoursChart(result: InferenceToDraw): LineChart {
         : {}),
     },
   );
-  // Closed lines run back and forth in x: the chart must not take the points for sorted, nor merge those of one pixel
-  // column, which it does to lines without tension.
-  return {
+  // Closed lines run back and forth in x: the chart must not take the points for sorted.
+  return everyPoint({
     ...chart,
-    data: { datasets: chart.data.datasets.map((set) => ({ ...set, tension: 1e-9 })) },
     options: { ...chart.options, parsing: { xAxisKey: "x", yAxisKey: "y" }, normalized: false },
-  };
+  });
 }
 
 function posteriorChart(result: InferenceToDraw, key: string): LineChart {

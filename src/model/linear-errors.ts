@@ -90,7 +90,7 @@ export function largeErrorWarnings(
     if (share < LARGE_SHARE) return [];
     const { id, largest } = large[0];
     return [
-      `${name}: ${(100 * share).toFixed(0)} % of its variance is of rates known to no better than a factor, first ${id} (a factor of ${Math.exp(largest).toPrecision(2)}); linear errors miss the tail, --samples shows it`,
+      `${name}: ${(100 * share).toFixed(0)} % of its variance is of rates known to no better than a factor, first ${id} (a factor of ${Math.exp(largest).toPrecision(2)}); linear errors miss the tail, abundances --samples N shows it`,
     ];
   });
 }

@@ -52,7 +52,7 @@ function priorText({ key, min, max, gaussian, source }: Prior): string {
   const label = (LABELS[key] ?? key).replace(" [s]", "");
   if (gaussian === undefined) return `${label} flat from ${min} to ${max}`;
   const from = source === undefined || source === "given" ? "" : ` (${source})`;
-  return `${label} ${formatEstimate(gaussian.value, gaussian.sigma)}${from}`;
+  return `${label} ${formatEstimate(gaussian.value, gaussian.sigma)}`.replaceAll(" ", "\u00a0") + from;
 }
 
 function signed(x: number): string {

@@ -3,14 +3,13 @@ import { runInference } from "../inference/infer.ts";
 import { DEFAULT_SET, parseObserved } from "../inference/observations.ts";
 import { type FreeKey, parseFree, parsePriors } from "../inference/priors.ts";
 import type { AskTheory, TheoryQuestion } from "../inference/theory-points.ts";
-import { type Model, validityWarnings } from "../model/prepare.ts";
 import type { RateLibrary } from "../nuclear/library.ts";
 import { ABUNDANCE_NAMES } from "../nucleosynthesis/abundances.ts";
 import { addCounts } from "../nucleosynthesis/run.ts";
 import { InputError } from "../numerics/check.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { InferResults } from "../output/infer-result.ts";
-import type { CosmologyParameters, Keys } from "../parameters/cosmology.ts";
+import type { Keys } from "../parameters/cosmology.ts";
 import { singleThread } from "../sweep/engine.ts";
 import type { PointAnswer } from "../sweep/point.ts";
 import type { Envelope, Progress } from "./envelope.ts";
@@ -74,14 +73,16 @@ export async function computeInfer(
     { names: ABUNDANCE_NAMES, ...(freeKeys.includes("tauN") ? { freeSource: 0 } : {}) },
     (share) => progress?.(share, "theory of the inference"),
   );
-  const best = bestParameters(model, freeKeys, results);
+  const bestKeys = bestOf(freeKeys, results);
+  const best = model.parameters(bestKeys);
   return makeEnvelope(
     "infer",
     best,
     results,
     nucleosynthesisProvenance(model, parameters),
     { ...asking.counts(), tolerance: parameters.tolerance },
-    [...warnings, ...validityWarnings(best)],
+    // Among them where linear errors, which the fit is made with, are not to be trusted.
+    [...warnings, ...model.abundances({ ...bestKeys, errors: "linear", samples: 0 }).warnings],
   );
 }
 
@@ -89,12 +90,10 @@ function text(value: unknown): string {
   return typeof value === "object" ? JSON.stringify(value) : String(value);
 }
 
-/** The cosmology of the answer: that of the best point, to the figures that are known of it. */
-function bestParameters(model: Model, free: readonly FreeKey[], results: InferResults): CosmologyParameters {
-  const { tauN, ...others } = Object.fromEntries(
-    free.map((key) => [key, Number(results.parameters[key].best.toPrecision(6))]),
-  );
-  return model.parameters({ ...others, ...(tauN === undefined ? {} : { tauN: { value: tauN, sigma: 0 } }) });
+/** The best point as keys, to the figures that are known of it. */
+function bestOf(free: readonly FreeKey[], { parameters }: InferResults): Keys {
+  const { tauN, ...others } = Object.fromEntries(free.map((key) => [key, Number(parameters[key].best.toPrecision(6))]));
+  return { ...others, ...(tauN === undefined ? {} : { tauN: { value: tauN, sigma: 0 } }) };
 }
 
 /** Answers the questions of an inference through an engine, those of one thermal history after the other. */
