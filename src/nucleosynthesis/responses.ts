@@ -42,7 +42,7 @@ export function computeResponses(
   const { compiled } = context.data;
   const table = variedTable(inputs.table ?? context.table, inputs.variations);
   const scale = fluxScale(compiled, table, inputs);
-  const options = tolerances(context.data, { ...inputs, method: "rodas4" });
+  const options = tolerances(context, { ...inputs, method: "rodas4" });
   const start = initialAbundances(context, inputs);
   const Y = start.Y.slice();
   const steps: RecordedStep[] = [];

@@ -1,6 +1,7 @@
 /** One nucleosynthesis run: n <-> p from 10 MeV, the network from equilibrium near 2 MeV to T9 = 0.01. */
 import type { ThermalHistory } from "../background/history.ts";
-import { mevToT9 } from "../constants/units.ts";
+import { NEUTRON_PROTON_MASS_DIFFERENCE } from "../constants/codata.ts";
+import { mevToT9, t9ToMeV } from "../constants/units.ts";
 import { type CompiledNetwork, compileNetwork } from "../network/compile.ts";
 import { generateKernels, loopKernels, type NetworkKernels } from "../network/generate.ts";
 import { lnEquilibriumAbundance } from "../network/nse.ts";
@@ -36,6 +37,8 @@ export interface RunContext {
   readonly weakOnClock: { readonly lnNToP: Float64Array; readonly lnPToN: Float64Array };
   /** ln(n_b/N_A) at eta10 = 1 and T where the network starts. */
   readonly lnRhoNStart: number;
+  /** True if a degeneracy shifts n/p by more than e^0.3: the network is then followed more tightly. */
+  readonly degenerate: boolean;
 }
 
 /** What changes from run to run. */
@@ -93,8 +96,16 @@ export function prepareRun(
       lnPToN: resample(weak.s, weak.lnPToN, clock.start, clock.step, clock.count).value,
     },
     lnRhoNStart: clock.lnRhoN.value[0],
+    degenerate:
+      Math.abs(weak.lnPToN[0] - weak.lnNToP[0] + NEUTRON_PROTON_MASS_DIFFERENCE.value / t9ToMeV(Math.exp(-weak.s[0]))) >
+      STRONG_DEGENERACY,
   };
 }
+
+/** Shift of ln(n/p) in equilibrium beyond which error scales made for a small one no longer suit. */
+const STRONG_DEGENERACY = 0.3;
+/** Factor on the tolerance there; measured: it keeps 2e-5 in every abundance down to xi_e = -3. */
+const DEGENERATE_TIGHTENING = 0.05;
 
 /**
  * Runs per flux after which generated code has paid for itself: until the engine has optimised it, straight-line code
@@ -204,8 +215,8 @@ export function networkSystem(
 const FIFTH_ORDER_BELOW = 3e-5;
 
 /** Method and tolerances of a run: fourth order when loose, fifth when tight, absolute tolerances by size. */
-export function tolerances(data: NetworkData, inputs: RunInputs): StiffOptions {
-  const rtol = inputs.tolerance;
+export function tolerances({ data, degenerate }: RunContext, inputs: RunInputs): StiffOptions {
+  const rtol = inputs.tolerance * (degenerate && inputs.tolerance > FIFTH_ORDER_BELOW ? DEGENERATE_TIGHTENING : 1);
   return {
     rtol,
     atol: absoluteTolerances(
@@ -213,7 +224,7 @@ export function tolerances(data: NetworkData, inputs: RunInputs): StiffOptions {
       inputs.eta10,
       rtol,
     ),
-    method: inputs.method ?? (rtol < FIFTH_ORDER_BELOW ? "rodas5p" : "rodas4"),
+    method: inputs.method ?? (inputs.tolerance < FIFTH_ORDER_BELOW ? "rodas5p" : "rodas4"),
     firstStep: 1e-3,
     maxSteps: 200000,
   };
@@ -258,7 +269,7 @@ export function initialAbundances(context: RunContext, inputs: RunInputs): { Y: 
 export function runNetwork(context: RunContext, inputs: RunInputs): NuclearRun {
   const start = initialAbundances(context, inputs);
   const table = inputs.table ?? context.table;
-  const options = tolerances(context.data, inputs);
+  const options = tolerances(context, inputs);
   if (options.method === "rodas4") {
     const { compiled } = context.data;
     const { slots } = compiled.elimination;
@@ -295,14 +306,19 @@ const SHAPING = new Set([
   "he3-d_p-he4",
 ]);
 const SHAPING_FACTOR = 1.3;
+/** Neutron mean lives [s] for which the sequence was checked. */
+const SEQUENCE_TAU_N = { min: 800, max: 960 } as const;
 const OTHER_FACTOR = 100;
 
 /** The stored sequence serves the default tolerance and method in its range of eta and rates. */
 function mayUseSequence(
-  { data }: RunContext,
-  { tolerance, method, table, eta10, adaptive, factors }: RunInputs,
+  { data, degenerate }: RunContext,
+  { tolerance, method, table, eta10, tauN, adaptive, factors }: RunInputs,
 ): boolean {
   const suits =
+    !degenerate &&
+    tauN >= SEQUENCE_TAU_N.min &&
+    tauN <= SEQUENCE_TAU_N.max &&
     tolerance === DEFAULTS.tolerance &&
     method === undefined &&
     table === undefined &&

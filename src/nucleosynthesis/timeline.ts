@@ -119,7 +119,7 @@ export function computeTimeline(context: RunContext, inputs: RunInputs): Timelin
   );
   const end = table.start + table.step * table.intervals;
   const late = new StiffStepper(system, sStart, initialAbundances(context, inputs).Y, end, {
-    ...tolerances(data, inputs),
+    ...tolerances(context, inputs),
   });
   for (; row < rows; row++) {
     advance(late, Math.min(s[row], end));

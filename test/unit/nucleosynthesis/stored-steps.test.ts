@@ -60,6 +60,20 @@ describe("stored sequence of steps", () => {
   }
 });
 
+test("strong degeneracy and unusual neutron lives keep 2e-5 at the default tolerance, adaptively", () => {
+  const model = prepareModel(loadRates(), { network: "twelve", errors: "none" });
+  for (const keys of [{ xiE: -3 }, { xiE: -2 }, { xiE: -0.5 }, { xiE: 1 }, { tauN: 500 }, { tauN: 1500 }]) {
+    const plain = model.abundances(keys);
+    expect(plain.solver.stepping).toBe("adaptive");
+    const tight = model.abundances({ ...keys, tolerance: 1e-7 }).abundances;
+    for (const name of FOUR as (keyof typeof tight)[])
+      expect(
+        Math.abs((plain.abundances[name]?.value as number) / (tight[name]?.value as number) - 1),
+        `${JSON.stringify(keys)} ${name}`,
+      ).toBeLessThan(2e-5);
+  }
+});
+
 // Counts do not depend on the machine; a margin of 10 % lets constants and rates change a little.
 test("steps of a run stay what they are", () => {
   const steps = (keys: Keys) => prepareModel(loadRates(), { errors: "none", ...keys }).abundances().solver.steps;
