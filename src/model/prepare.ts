@@ -1,7 +1,9 @@
 /** A prepared model: keeps background, weak rates and compiled network, and recomputes only what a changed key touches. */
 import { type BackgroundOptions, computeThermalHistory, type ThermalHistory } from "../background/history.ts";
+import { NEWTON_G_CGS } from "../constants/units.ts";
 import type { RateLibrary, SelectedReaction } from "../nuclear/library.ts";
 import { selectNetwork } from "../nuclear/library.ts";
+import { resolveReaction } from "../nuclear/reaction-name.ts";
 import {
   ABUNDANCE_NAMES,
   type AbundanceName,
@@ -26,6 +28,7 @@ import { notAKnotSpline } from "../numerics/interpolate.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import {
   type CosmologyParameters,
+  checkKeys,
   DEFAULTS,
   type Keys,
   NUCLEOSYNTHESIS_CORRECTIONS,
@@ -111,6 +114,7 @@ const PAIRS: readonly (readonly (keyof Keys)[])[] = [
 
 /** Base keys with overrides; a key that replaces its partner (eta10 for omegaB) removes it. */
 export function mergeKeys(base: Keys, overrides: Keys = {}): Keys {
+  checkKeys(overrides);
   const merged: Record<string, unknown> = { ...base };
   for (const pair of PAIRS) if (pair.some((k) => overrides[k] !== undefined)) for (const k of pair) delete merged[k];
   for (const [k, v] of Object.entries(overrides)) if (v !== undefined) merged[k] = v;
@@ -273,7 +277,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
         ...(errors.quantiles ? { quantiles: errors.quantiles } : {}),
         ...(errors.sampling ? { sampling: errors.sampling } : {}),
         solver: { ...counts, stepping: central.stepping, tolerance: p.tolerance },
-        warnings: [...validityWarnings(p), ...(errors.warnings ?? [])],
+        warnings: [...validityWarnings(p), ...runWarnings(ctx, central), ...(errors.warnings ?? [])],
       });
       if (p.errors === "none") return report({});
       if (p.errors === "linear") {
@@ -416,17 +420,48 @@ export function scaleFactors(
 ): Float64Array {
   const factors = new Float64Array(data.reactions.length + 1).fill(1);
   const index = new Map([[WEAK_REACTION, 0], ...data.reactions.map((r, i): [string, number] => [r.id, i + 1])]);
+  const scaled = new Set<string>();
   for (const [given, factor] of Object.entries(scales)) {
-    const id = given === WEAK_REACTION ? given : library.reactionId(given);
+    const id = given === WEAK_REACTION ? given : resolveReaction(given, library.reactions, "scale");
     const i = index.get(id);
     if (i === undefined)
       throw new InputError(
         "reaction",
         `scale ${given}: reaction is not in network ${data.name}; choose another network`,
       );
+    if (scaled.has(id)) throw new InputError("conflict", `scale ${given}: ${id} is given twice; keep one of them`);
+    scaled.add(id);
     factors[i] = factor;
   }
   return factors;
+}
+
+/** Factors on H beyond which equilibrium at the start of the run can no longer be taken for granted. */
+const USUAL_FACTOR = { min: 0.03, max: 30 } as const;
+
+/** What a finished run shows: abundances below what the integration resolves, an expansion far from the usual one. */
+function runWarnings(ctx: RunContext, run: { names: readonly AbundanceName[]; values: readonly number[] }): string[] {
+  const warnings = run.names.flatMap((name, i) =>
+    run.values[i] < 0
+      ? [
+          `${name} = ${run.values[i].toExponential(1)}: below what the integration resolves, take it as 0; a smaller tolerance resolves more`,
+        ]
+      : [],
+  );
+  const { H, rho } = ctx.history;
+  let least = Number.POSITIVE_INFINITY;
+  let most = 0;
+  for (let i = 0; i < H.length; i++) {
+    const factor = H[i] / Math.sqrt(((8 * Math.PI) / 3) * NEWTON_G_CGS * rho[i]);
+    least = Math.min(least, factor);
+    most = Math.max(most, factor);
+  }
+  if (least < USUAL_FACTOR.min || most > USUAL_FACTOR.max)
+    warnings.push(
+      `expansion: the factor on H runs from ${least.toPrecision(2)} to ${most.toPrecision(2)}; beyond ${USUAL_FACTOR.min} to ${USUAL_FACTOR.max} ` +
+        "equilibrium at the start (10 MeV, 2 MeV) and the end at T9 = 0.01 no longer hold",
+    );
+  return warnings;
 }
 
 /** What is legal but outside the range where the physics here is checked. */
@@ -445,6 +480,12 @@ export function validityWarnings(p: CosmologyParameters): string[] {
   if (p.network === "twelve" && p.eta10 > 20)
     warnings.push(`network twelve at eta10 = ${p.eta10.toPrecision(4)}: flows beyond A = 7 are left out; use extended`);
   if (HEAVY_NETWORKS.includes(p.network)) warnings.push(`network ${p.network}: ${ORDER_OF_MAGNITUDE_REASON}`);
+  if (p.tauNSigma > 0.1 * p.tauN)
+    warnings.push(`tauN = ${p.tauN}±${p.tauNSigma} s: an error this large is beyond linear propagation; use samples`);
+  if (p.omegaBSigma > 0.3 * p.omegaB)
+    warnings.push(
+      `omegaB = ${p.omegaB.toPrecision(4)}±${p.omegaBSigma.toPrecision(2)}: an error this large is beyond linear propagation; use samples`,
+    );
   if (p.eta10 < 0.3)
     warnings.push(
       `eta10 = ${p.eta10.toPrecision(4)}: nucleosynthesis is incomplete and sensitive to rates of weak support`,

@@ -1,5 +1,5 @@
 /** The lower half of every text output: cosmology, corrections, rates, cost, warnings. */
-import { formatReaction } from "../nuclear/reaction-name.ts";
+import { formatReaction, parseReactionName } from "../nuclear/reaction-name.ts";
 import type { CosmologyParameters } from "../parameters/cosmology.ts";
 import { NUCLEOSYNTHESIS_CORRECTIONS } from "../parameters/cosmology.ts";
 import type { Envelope, RateUsed } from "./result.ts";
@@ -56,7 +56,7 @@ export function cosmologyLines(c: CosmologyParameters): string[] {
     if (value !== 0) parts.push(`${name} ${value}`);
   const lines = entry("cosmology", parts.map(held).join(", "));
   if (c.expansion.trim() !== "1") lines.push(...entry("expansion", `H(T) times ${c.expansion}`));
-  const scaled = Object.entries(c.scales).map(([id, factor]) => held(`${id} x ${factor}`));
+  const scaled = Object.entries(c.scales).map(([id, factor]) => held(`${formatReaction(parseReactionName(id))} × ${factor}`));
   if (scaled.length > 0) lines.push(...entry("scaled", scaled.join(", ")));
   return lines;
 }
@@ -119,6 +119,13 @@ export function noteLine(answer: Envelope): string {
   return `${parts.join(", ")}; network ${provenance.network}; emberline ${answer.version}`;
 }
 
+/** `REACTION=VALUE` of what was chosen by reaction, the reactions by their ids. */
+function byReaction(chosen: Readonly<Record<string, string | number>>): string {
+  return Object.entries(chosen)
+    .map(([name, value]) => `${parseReactionName(name)}=${value}`)
+    .join(" ");
+}
+
 /** Provenance as short lines, for the comments of CSV and the meta of ECSV. */
 export function provenanceNotes(answer: Envelope): Record<string, string | readonly string[]> {
   const { provenance, cosmology: c } = answer;
@@ -132,6 +139,8 @@ export function provenanceNotes(answer: Envelope): Record<string, string | reado
     corrections: provenance.corrections.length > 0 ? provenance.corrections.join(" ") : "none",
     constants: provenance.constants,
     network: provenance.network,
+    ...(Object.keys(c.evaluations).length > 0 ? { evaluations: byReaction(c.evaluations) } : {}),
+    ...(Object.keys(c.scales).length > 0 ? { scales: byReaction(c.scales) } : {}),
     rates: provenance.rates.map(
       (rate) =>
         `${rate.reaction}: ${rate.evaluation}${rate.scale === undefined ? "" : ` x ${rate.scale}`}; ` +

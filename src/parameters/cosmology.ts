@@ -158,6 +158,37 @@ export function eta10PerOmegaB(tCmb: number): number {
   return (1e10 * criticalDensity) / massPerBaryon / nGamma;
 }
 
+/** Keys that take a value with an error. */
+const MEASURED_KEYS = new Set(["omegaB", "eta10", "tauN"]);
+const TEXT_KEYS = new Set(["model", "expansion", "network", "errors"]);
+const OTHER_KEYS = new Set(["without", "evaluations", "scales"]);
+
+/**
+ * Checks keys that a program (not the command line) hands over: each known, each of its kind.
+ * @throws {InputError} naming the key, its value and what is accepted
+ */
+export function checkKeys(keys: Keys): void {
+  for (const [key, value] of Object.entries(keys)) {
+    if (value === undefined) continue;
+    const wrong = (wanted: string) => new InputError("key", `${key} = ${JSON.stringify(value)}: must be ${wanted}`);
+    if (TEXT_KEYS.has(key)) {
+      if (typeof value !== "string") throw wrong("a string");
+    } else if (key in RANGES) {
+      const measured =
+        MEASURED_KEYS.has(key) &&
+        typeof value === "object" &&
+        typeof value.value === "number" &&
+        typeof value.sigma === "number";
+      if (typeof value !== "number" && !measured)
+        throw wrong(MEASURED_KEYS.has(key) ? "a number or {value, sigma}" : "a number");
+    } else if (!OTHER_KEYS.has(key))
+      throw new InputError(
+        "key",
+        `${key}: unknown key; known are ${[...Object.keys(RANGES), ...TEXT_KEYS, ...OTHER_KEYS].join(", ")}`,
+      );
+  }
+}
+
 function split(input: number | Measured | undefined): { value: number | undefined; sigma: number } {
   if (input === undefined || typeof input === "number") return { value: input, sigma: 0 };
   return { value: input.value, sigma: input.sigma };
@@ -167,6 +198,10 @@ function ranged(key: string, value: number): number {
   const range = RANGES[key];
   requireRange(key, value, range.unit, range.min, range.max);
   return value;
+}
+
+function wholeNumber(key: string, value: number): string {
+  return `${key} = ${value}: must be a whole number from ${RANGES[key].min} to ${RANGES[key].max}`;
 }
 
 function oneOf<T extends string>(key: string, value: string, allowed: readonly T[]): T {
@@ -215,12 +250,17 @@ export function resolveParameters(
       );
   }
   const samples = ranged("samples", keys.samples ?? DEFAULTS.samples);
-  if (!Number.isInteger(samples)) throw new InputError("range", `samples = ${samples}: must be a whole number`);
+  if (!Number.isInteger(samples)) throw new InputError("range", wholeNumber("samples", samples));
   const seed = ranged("seed", keys.seed ?? DEFAULTS.seed);
-  if (!Number.isInteger(seed)) throw new InputError("range", `seed = ${seed}: must be a whole number`);
+  if (!Number.isInteger(seed)) throw new InputError("range", wholeNumber("seed", seed));
   const requested = oneOf("errors", keys.errors ?? DEFAULTS.errors, ["linear", "none", "sampled"] as const);
   if (requested === "sampled" && samples === 0)
     throw new InputError("conflict", "errors = sampled needs samples: add --samples N");
+  if (samples > 0 && keys.errors !== undefined && requested !== "sampled")
+    throw new InputError(
+      "conflict",
+      `errors = ${requested} and samples = ${samples}: samples give sampled errors; give one of them`,
+    );
   const optional = (key: "ypMass" | "tauReion" | "zReion") =>
     keys[key] === undefined ? {} : { [key]: ranged(key, keys[key]) };
   return {
