@@ -184,7 +184,7 @@ export function prepareModel(library: RateLibrary, keys: Keys = {}, compile?: Ex
 
   /** Helium mass fraction of the nucleosynthesis run for these keys. */
   function heliumMass(of: Keys): number {
-    const p = resolveParameters({ ...of, errors: "none" }, NUCLEOSYNTHESIS_CORRECTIONS);
+    const p = resolveParameters({ ...of, errors: "none", samples: 0 }, NUCLEOSYNTHESIS_CORRECTIONS);
     const ctx = context(p);
     const factors = scaleFactors(ctx.data, p.scales, library);
     const { names, values } = evaluate(ctx, { eta10: p.eta10, tauN: p.tauN, factors, tolerance: p.tolerance });
