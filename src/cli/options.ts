@@ -39,6 +39,13 @@ function accepted(key: string): string {
   return `${min} to ${max}${unit === "" ? "" : ` ${unit}`}`;
 }
 
+/** A value as it is shown in a message: blank ones in quotes. */
+function shown(text: string): string {
+  return text.trim() === "" ? JSON.stringify(text) : text;
+}
+
+const PLUS_MINUS = /±|\+\/-|\+-/;
+
 /**
  * A number written in full: nothing after it, no NaN or infinity.
  * @throws {InputError} naming the option and what it accepts
@@ -46,22 +53,24 @@ function accepted(key: string): string {
 export function strictNumber(text: string, option: string, expected: string): number {
   const value = NUMBER.test(text.trim()) ? Number(text) : Number.NaN;
   if (!Number.isFinite(value))
-    throw new InputError("number", `${option} ${text === "" ? '""' : text}: not a finite number; give ${expected}`);
+    throw new InputError("number", `${option} ${shown(text)}: not a finite number; give ${expected}`);
   return value;
 }
 
 /** A number within the range of its key. @throws {InputError} */
 export function numberInRange(text: string, option: string, key: string): number {
+  if (PLUS_MINUS.test(text))
+    throw new InputError("number", `${option} ${text}: takes no error; give a number from ${accepted(key)}`);
   const value = strictNumber(text, option, `a number from ${accepted(key)}`);
-  const { min, max, meaning } = RANGES[key];
+  const { min, max } = RANGES[key];
   if (!(value >= min && value <= max))
-    throw new InputError("range", `${option} ${text}: out of range; ${meaning} must be ${accepted(key)}`);
+    throw new InputError("range", `${option} ${text}: out of range; accepted are ${accepted(key)}`);
   return value;
 }
 
 /** A number, or one with its error: `878.4±0.5`, `878.4+-0.5`, `878.4+/-0.5`. */
 function measuredInRange(text: string, option: string, key: string): number | Measured {
-  const [first, second, ...rest] = text.split(/±|\+\/-|\+-/);
+  const [first, second, ...rest] = text.split(PLUS_MINUS);
   if (second === undefined) return numberInRange(text, option, key);
   if (rest.length > 0) throw new InputError("number", `${option} ${text}: more than one error; write VALUE±SIGMA`);
   const value = numberInRange(first, option, key);
@@ -73,14 +82,15 @@ function measuredInRange(text: string, option: string, key: string): number | Me
 
 function wholeInRange(text: string, option: string, key: string): number {
   const value = numberInRange(text, option, key);
-  if (!Number.isInteger(value)) throw new InputError("range", `${option} ${text}: must be a whole number`);
+  if (!Number.isInteger(value))
+    throw new InputError("range", `${option} ${text}: must be a whole number from ${accepted(key)}`);
   return value;
 }
 
 /** @throws {InputError} unless the word is one of the choices */
 export function oneOf(text: string, option: string, choices: readonly string[]): string {
   if (!choices.includes(text))
-    throw new InputError("choice", `${option} ${text}: unknown; accepted are ${choices.join(", ")}`);
+    throw new InputError("choice", `${option} ${shown(text)}: unknown; accepted are ${choices.join(", ")}`);
   return text;
 }
 
@@ -88,7 +98,7 @@ export function oneOf(text: string, option: string, choices: readonly string[]):
 function pair(text: string, option: string, expected: string): [string, string] {
   const at = text.lastIndexOf("=");
   if (at <= 0 || at === text.length - 1)
-    throw new InputError("syntax", `${option} ${text}: write ${expected}, with a reaction such as d(p,g)he3`);
+    throw new InputError("syntax", `${option} ${shown(text)}: write ${expected}, with a reaction such as d(p,g)he3`);
   return [text.slice(0, at).trim(), text.slice(at + 1).trim()];
 }
 
@@ -125,7 +135,7 @@ export function parseChart(text: string, names: readonly string[], previous: rea
   if (request.name !== undefined && !names.includes(request.name))
     throw new InputError("choice", `--chart ${text}: no chart ${request.name}; there are ${names.join(", ")}`);
   if (!/[^/\\]\.(png|svg|pdf)$/i.test(request.file))
-    throw new InputError("choice", `--chart ${text}: the file must end in .png, .svg or .pdf`);
+    throw new InputError("choice", `--chart ${shown(text)}: the file must end in .png, .svg or .pdf`);
   return [...previous, request];
 }
 
@@ -195,6 +205,29 @@ export function nucleosynthesisOptions(): Option[] {
     new Option("--rates <dir>", "another rate library, whole or holding only the files that differ"),
     number("tolerance", "tolerance"),
   ];
+}
+
+/** Options that may be given more than once. */
+const REPEATABLE = ["--without", "--evaluation", "--scale", "--chart", "--over", "--observed", "--prior"];
+
+/**
+ * The same option, refusing a second value that differs from the first, where only one counts.
+ * Without a parser of its own an option keeps one value, whatever its name.
+ */
+export function onlyOnce(option: Option): Option {
+  const parse = option.parseArg;
+  const counts = parse !== undefined && REPEATABLE.includes(option.long ?? "");
+  if (counts || option.variadic || !(option.required || option.optional)) return option;
+  let first: string | undefined;
+  return option.argParser((text: string, previous: unknown) => {
+    if (first !== undefined && first !== text)
+      throw new InputError(
+        "conflict",
+        `${option.long} ${shown(first)} and ${shown(text)}: given twice; keep one of them`,
+      );
+    first = text;
+    return parse === undefined ? text : parse(text, previous);
+  });
 }
 
 /** Theory errors and Monte Carlo. */

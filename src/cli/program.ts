@@ -6,7 +6,8 @@ import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { EmberlineError, InputError } from "../numerics/check.ts";
 import { VERSION } from "../version.ts";
 import { inferOptions } from "./infer-options.ts";
-import { errorOptions, nucleosynthesisOptions, type Options, outputOptions } from "./options.ts";
+import { nameOptions } from "./name-options.ts";
+import { errorOptions, nucleosynthesisOptions, type Options, onlyOnce, outputOptions } from "./options.ts";
 import { addRatesCommands, RATES, spellRates } from "./rates-commands.ts";
 import { recombinationOptions } from "./recombination-options.ts";
 import { SWEEP_COMMANDS } from "./sweep-commands.ts";
@@ -74,7 +75,7 @@ function addCommand(program: Command, spec: CommandSpec, withOptions: boolean): 
     .description(`${spec.summary[0].toUpperCase()}${spec.summary.slice(1)}.`)
     .addHelpText("after", `\nExample:\n  ${spec.example}`)
     .action(async (options: Options) => (await spec.load()).run(options));
-  if (withOptions) for (const option of spec.options()) command.addOption(option);
+  if (withOptions) for (const option of spec.options()) command.addOption(onlyOnce(option));
 }
 
 /**
@@ -99,6 +100,12 @@ function commandOf(args: readonly string[]): string {
   return word === undefined || word.startsWith("-") ? DEFAULT_COMMAND : word;
 }
 
+/** The words after `emberline help` that explain a command line. */
+function helpOf(args: readonly string[]): string {
+  const command = commandOf(args);
+  return command === RATES && args[1] !== undefined && !args[1].startsWith("-") ? `${RATES} ${args[1]}` : command;
+}
+
 /** Commander takes a stray word for an argument of the default command; here it is an unknown command. */
 function requireKnownCommand(args: readonly string[]): void {
   const names = [...COMMANDS.map((spec) => spec.name), RATES, "help"];
@@ -118,25 +125,17 @@ const REMEDIES: Readonly<Record<string, string>> = {
   "commander.missingMandatoryOptionValue": "add it",
 };
 
-/** A request speaks of keys, `network = x`; on the command line they are options, `--network x`. */
-function nameOptions(message: string): string {
-  return message
-    .replace(/^(network|errors|samples|seed|tolerance|rates|scale|nuclide) (?:= )?/, "--$1 ")
-    .replace(/^expansion /, "--expansion ")
-    .replace(
-      /^(h0|z|tauReion|without|from|name|basis|citation) = /,
-      (_, key: string) => `--${key === "tauReion" ? "tau-reion" : key} `,
-    );
-}
-
-/** One line for an error, and the exit status. */
-export function describeError(error: unknown): { readonly line: string; readonly status: number } {
+/** One line for an error, and the exit status. @param args the words of the command line */
+export function describeError(
+  error: unknown,
+  args: readonly string[] = [],
+): { readonly line: string; readonly status: number } {
   const say = (text: string) => `emberline: ${text.trim().replace(/\s*\n\s*/g, " ")}`;
-  if (error instanceof EmberlineError) return { line: say(nameOptions(error.message)), status: error.exitCode };
+  if (error instanceof EmberlineError) return { line: say(nameOptions(error.message, args)), status: error.exitCode };
   if (error instanceof Interrupted) return { line: say(error.message), status: error.exitCode };
   if (error instanceof CommanderError) {
     const message = error.message.replace(/^error: /, "").replace(/\.$/, "");
-    return { line: say(`${message}; ${REMEDIES[error.code] ?? "see emberline help"}`), status: 2 };
+    return { line: say(`${message}; ${REMEDIES[error.code] ?? `see emberline help ${helpOf(args)}`}`), status: 2 };
   }
   const message = error instanceof Error ? `${error.name}: ${error.message}` : String(error);
   return { line: say(`the calculation failed: ${message}; --debug shows where`), status: 1 };
@@ -158,7 +157,7 @@ export async function main(args: readonly string[]): Promise<number> {
       await printResult(printed.join(""));
       return 0;
     }
-    const { line, status } = describeError(error);
+    const { line, status } = describeError(error, args);
     await printNotice(line);
     if (args.includes("--debug") && error instanceof Error) await printNotice(error.stack ?? "");
     return status;

@@ -3,7 +3,7 @@ import { Argument, type Command, Option } from "commander";
 import type { RateLibrary } from "../nuclear/library.ts";
 import { suggestNearest } from "../nuclear/reaction-name.ts";
 import { InputError } from "../numerics/check.ts";
-import { nucleosynthesisOptions, type Options, outputOptions, strictNumber } from "./options.ts";
+import { nucleosynthesisOptions, type Options, onlyOnce, outputOptions, strictNumber } from "./options.ts";
 
 /** One command of the group: as those of the first level, with words after its name. */
 interface RatesSpec {
@@ -133,7 +133,7 @@ function addSpec(group: Command, spec: RatesSpec): void {
       await (await spec.load()).run({ ...options, ...words });
     });
   for (const word of spec.words) command.addArgument(word);
-  for (const option of spec.options()) command.addOption(option);
+  for (const option of spec.options()) command.addOption(onlyOnce(option));
 }
 
 /** Adds the group to the command line. Without a word after it: the list. */
