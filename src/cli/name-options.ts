@@ -20,7 +20,20 @@ const OPTION_OF_KEY: Readonly<Record<string, string>> = {
 /** Keys that are spelt as their options, and name them wherever a message starts with them. */
 const SAME = ["network", "errors", "samples", "seed", "tolerance", "rates", "scale", "nuclide", "expansion"];
 /** The same, where more words follow that are no value. */
-const WITH_EQUALS = ["eta10", "h0", "model", "z", "without", "from", "name", "basis", "citation", "reaction", "format"];
+const WITH_EQUALS = [
+  "eta10",
+  "h0",
+  "model",
+  "z",
+  "without",
+  "from",
+  "name",
+  "basis",
+  "citation",
+  "reaction",
+  "format",
+  "free",
+];
 /** Options whose text is the user's own, written after the key. */
 const WITH_TEXT = ["over", "part", "observed", "free", "prior", "evaluation"];
 

@@ -55,7 +55,8 @@ export const SWEEP_COMMANDS: readonly SweepCommand[] = [
   },
   {
     name: "batch",
-    summary: "one JSON request a line on standard input, one JSON answer a line on standard output, in order",
+    summary:
+      "one JSON request a line on standard input, one JSON answer a line on standard output, in order; blank lines are skipped",
     options: batchOptions,
     example: `echo '{"command": "abundances", "omegaB": 0.022, "network": "twelve"}' | emberline batch`,
     load: () => import("./commands/batch.ts"),

@@ -5,6 +5,7 @@ import { createInterface } from "node:readline";
 import { InputError } from "../numerics/check.ts";
 import { warningKind } from "../requests/sweep.ts";
 import { orderParts, type PartHeader, parsePartHeader, wholeHeader } from "../sweep/grid-part.ts";
+import { fileReason } from "./file-reason.ts";
 import { printResult } from "./print.ts";
 import { requireWritable, writeWhole } from "./write-file.ts";
 
@@ -16,8 +17,7 @@ async function* linesOf(file: string): AsyncGenerator<string> {
   try {
     yield* createInterface({ input: createReadStream(file, "utf8"), crlfDelay: Number.POSITIVE_INFINITY });
   } catch (error) {
-    const { code, message } = error as NodeJS.ErrnoException;
-    throw new InputError("unreadable", `${file}: cannot be read (${code ?? message}); give the files of the parts`);
+    throw new InputError("unreadable", `${file}: cannot be read (${fileReason(error)}); give the files of the parts`);
   }
 }
 

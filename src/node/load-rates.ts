@@ -6,6 +6,7 @@ import type { TextFile } from "../nuclear/csv-rows.ts";
 import { buildLibrary, type LibraryFiles, overlay, type RateLibrary } from "../nuclear/library.ts";
 import { parseReactionId } from "../nuclear/reaction.ts";
 import { InputError } from "../numerics/check.ts";
+import { fileReason } from "./file-reason.ts";
 
 /**
  * The folder rates/ of this package: found by walking up from this file.
@@ -38,7 +39,7 @@ export function folderFiles(root: string, shownRoot: string): LibraryFiles {
       } catch (error) {
         const code = (error as NodeJS.ErrnoException).code;
         if (code === "ENOENT" || code === "ENOTDIR") return [];
-        throw new InputError("library", `${join(shownRoot, folder)}: cannot be read (${code})`);
+        throw new InputError("library", `${join(shownRoot, folder)}: cannot be read (${fileReason(error)})`);
       }
     },
     read(path) {
@@ -50,7 +51,7 @@ export function folderFiles(root: string, shownRoot: string): LibraryFiles {
         if (code === "ENOENT" || code === "ENOTDIR") return undefined;
         throw new InputError(
           "library",
-          `${file}: cannot be read (${error instanceof TypeError ? "not UTF-8 text" : code})`,
+          `${file}: cannot be read (${error instanceof TypeError ? "not UTF-8 text" : fileReason(error)})`,
         );
       }
     },
@@ -72,14 +73,30 @@ function isReactionFolder(name: string): boolean {
   return name.includes("_") && !name.includes(".");
 }
 
-/** @throws {InputError} if there is no such folder, or it holds nothing of a rate library */
-export function openFolder(folder: string): OpenedFolder {
-  if (statSync(folder, { throwIfNoEntry: false })?.isDirectory() !== true)
-    throw new InputError("library", `rates = ${folder}: no such folder`);
+/** What stands at a path; undefined if nothing does. @throws {InputError} if that cannot be found out */
+function statOf(path: string, shown: string) {
+  try {
+    return statSync(path, { throwIfNoEntry: false });
+  } catch (error) {
+    throw new InputError("unreadable", `${shown}: cannot be read (${fileReason(error)})`);
+  }
+}
+
+/**
+ * Opens a user's folder of rates.
+ * @param given how the folder is named in messages: the key it stands for, or itself
+ * @throws {InputError} if there is no such folder, or it holds nothing of a rate library
+ */
+export function openFolder(folder: string, given = `rates = ${folder}`): OpenedFolder {
+  const found = folder === "" ? undefined : statOf(folder, given);
+  if (found?.isDirectory() !== true) {
+    const problem = found === undefined ? "no such folder" : "is a file, not a folder";
+    throw new InputError("library", `${given}${folder === "" ? '""' : ""}: ${problem}`);
+  }
   const files = folderFiles(folder, folder);
   const entries = files.list("");
   if (!entries.some((name) => isReactionFolder(name) || name === "networks" || name === "nuclides.csv"))
-    throw new InputError("library", `rates = ${folder}: holds no reaction folder, networks/ or nuclides.csv`);
+    throw new InputError("library", `${given}: holds no reaction folder, networks/ or nuclides.csv`);
   return { library: overlay(loadRates(), buildLibrary(files)), prefix: join(folder, "."), entries };
 }
 
@@ -106,9 +123,9 @@ export function loadRates(folder?: string): RateLibrary {
  * @throws {InputError} if it cannot be read or is no UTF-8 text
  */
 export function readText(path: string, option: string): TextFile {
-  const found = statSync(path, { throwIfNoEntry: false })?.isDirectory()
-    ? undefined
-    : folderFiles(dirname(path), dirname(path)).read(basename(path));
+  if (statOf(path, `${option} = ${path}`)?.isDirectory())
+    throw new InputError("unreadable", `${option} = ${path}: is a directory; give a file`);
+  const found = folderFiles(dirname(path), dirname(path)).read(basename(path));
   if (found === undefined) throw new InputError("unreadable", `${option} = ${path}: no such file`);
   return { file: path, text: found.text };
 }

@@ -29,6 +29,8 @@ function refusal(error: unknown, file: string): Finding {
   if (!(error instanceof EmberlineError)) throw error;
   const place = PLACE.exec(error.message);
   if (place) return { severity: "error", file: place[1], line: Number(place[2]), problem: place[3] };
+  const named = /^(\S+\.e?csv): ([\s\S]*)$/.exec(error.message);
+  if (named?.[1].endsWith(file)) return { severity: "error", file: named[1], line: 0, problem: named[2] };
   return { severity: "error", file, line: 0, problem: error.message };
 }
 

@@ -67,6 +67,11 @@ export function parseCsv({ file, text }: TextFile, required: readonly string[]):
       throw errorAt(file, index + 1, `${cells.length} cells where the header names ${header.length} columns`);
     rows.push({ line: index + 1, cells: Object.fromEntries(header.map((name, i) => [name, cells[i]])) });
   }
-  if (!header || rows.length === 0) throw errorAt(file, 1, `no rows; expected columns ${required.join(",")} and data`);
+  if (!header || rows.length === 0)
+    throw errorAt(
+      file,
+      1,
+      required.length > 0 ? `no rows; expected columns ${required.join(",")} and data` : "no rows below the header",
+    );
   return rows;
 }

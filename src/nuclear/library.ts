@@ -164,7 +164,7 @@ function unknown(what: string, name: string, accepted: readonly string[]): Input
   const nearest = suggestNearest(name, accepted);
   return new InputError(
     "choice",
-    `${what} = ${name}: unknown; accepted are ${accepted.join(", ")}${nearest ? `; did you mean ${nearest}?` : ""}`,
+    `${what} = ${name.trim() === "" ? JSON.stringify(name) : name}: unknown; accepted are ${accepted.join(", ")}${nearest ? `; did you mean ${nearest}?` : ""}`,
   );
 }
 

@@ -18,6 +18,13 @@ type Name = keyof typeof COLUMNS;
 /** Fewest points a table may have. */
 export const FEWEST_POINTS = 4;
 
+/** What each column may be in. */
+const ACCEPTED_UNITS: Readonly<Record<Name, string>> = {
+  E: "eV, keV or MeV",
+  S: "eV b, keV b or MeV b",
+  sigma: "eV b, keV b or MeV b",
+};
+
 /** `MeV`, `keV b`, `MeV_b`, `[eV b]` -> factor to MeV (b); undefined if it is no such unit. */
 function unitFactor(text: string, name: Name): number | undefined {
   const parts = text
@@ -72,6 +79,8 @@ function readResonances({ file, text }: TextFile): NarrowResonance[] {
 export function parseSFactorFile(source: TextFile): SFactorData {
   const { file, text } = source;
   const headerLine = linesOf(text).findIndex((line) => line.trim() !== "" && !line.startsWith("#")) + 1;
+  if (headerLine === 0)
+    throw errorAt(file, 1, "the file is empty; expected a header such as E_MeV,S_MeV_b and at least four points");
   const rows = parseCsv(source, []);
   const columns = new Map<Name, Column>();
   for (const header of Object.keys(rows[0].cells)) {
@@ -81,7 +90,7 @@ export function parseSFactorFile(source: TextFile): SFactorData {
       throw errorAt(
         file,
         headerLine,
-        `column ${header}: unknown unit; energies in eV, keV or MeV, S in eV b, keV b or MeV b`,
+        `column ${header}: unknown unit; accepted are ${ACCEPTED_UNITS[column.name]}, as in ${column.name}_MeV${column.name === "E" ? "" : "_b"}`,
       );
     columns.set(column.name, column);
   }
@@ -89,7 +98,11 @@ export function parseSFactorFile(source: TextFile): SFactorData {
     if (!columns.has(name))
       throw errorAt(file, headerLine, `no column for the ${COLUMNS[name]} (${name}_MeV${name === "S" ? "_b" : ""})`);
   const first = rows[0];
-  const unitRow = [...columns.values()].every(({ header }) => /[A-Za-z]V/.test(first.cells[header]));
+  // A row below a header without units that holds no number anywhere is one of units, right or wrong.
+  const unitRow = [...columns.values()].every(
+    ({ header, factor }) =>
+      /[A-Za-z]V/.test(first.cells[header]) || (factor === undefined && !/\d|^$/.test(first.cells[header])),
+  );
   const factors = new Map<Name, number>();
   for (const { header, name, factor } of columns.values()) {
     const below = unitRow ? unitFactor(first.cells[header], name) : factor;
@@ -98,7 +111,7 @@ export function parseSFactorFile(source: TextFile): SFactorData {
         file,
         unitRow ? first.line : headerLine,
         unitRow
-          ? `unit of ${header} is ${first.cells[header]}: energies in eV, keV or MeV, S in eV b, keV b or MeV b`
+          ? `unit of ${header}: ${first.cells[header]} is not known; accepted are ${ACCEPTED_UNITS[name]}`
           : `column ${header} has no unit: name it ${name}_MeV${name === "E" ? "" : "_b"}, or add a row of units below the header`,
       );
     if (unitRow && factor !== undefined && factor !== below)

@@ -51,6 +51,18 @@ const COMPARISONS: Readonly<Record<string, string>> = {
 
 const MAX_LENGTH = 1000;
 
+/** What the parser's other kinds of nodes are, in words. */
+const REFUSED: Readonly<Record<string, string>> = {
+  AccessorNode: "access to a part of a value (a.b, a[1])",
+  ArrayNode: "a list in brackets",
+  AssignmentNode: "an assignment (=; to compare write ==)",
+  BlockNode: "more than one expression",
+  FunctionAssignmentNode: "the definition of a function",
+  IndexNode: "an index in brackets",
+  ObjectNode: "an object in braces",
+  RangeNode: "a range (a:b)",
+};
+
 /** The fields of mathjs syntax-tree nodes that are read here. */
 interface SyntaxNode {
   readonly type: string;
@@ -126,7 +138,7 @@ function bind(node: SyntaxNode, variables: readonly string[], refuse: (why: stri
       return (values) => Number(tests.every((test, i) => test(params[i](values), params[i + 1](values))));
     }
     default:
-      return refuse(`${node.type.replace(/Node$/, "").toLowerCase()} is not accepted in an expression`);
+      return refuse(`${REFUSED[node.type] ?? "something"} is not accepted in an expression`);
   }
 }
 
@@ -154,18 +166,19 @@ export async function compileExpression(
 ): Promise<ExpressionFunction> {
   const constant = trivialExpression(text);
   if (constant !== undefined) return () => constant;
-  const shown = text.length > 80 ? `${text.slice(0, 77)}...` : text;
+  const blank = text.trim() === "";
+  const shown = blank ? JSON.stringify(text) : text.length > 80 ? `${text.slice(0, 77)}...` : text;
   const refuse = (why: string): never => {
     throw new InputError("expression", `${name} = ${shown}: ${why}`);
   };
-  if (text.trim() === "") refuse(`is empty; give an expression in ${variables.join(", ")}`);
+  if (blank) refuse(`is empty; give an expression in ${variables.join(", ")}`);
   if (text.length > MAX_LENGTH) refuse(`has ${text.length} characters, accepted are ${MAX_LENGTH}`);
   const { parse } = await import("mathjs/number");
   let tree: MathNode;
   try {
     tree = parse(text);
   } catch (error) {
-    return refuse(`does not parse: ${error instanceof Error ? error.message : String(error)}`);
+    return refuse(`does not parse, ${error instanceof Error ? error.message : String(error)}`);
   }
   const bound = bind(tree as unknown as SyntaxNode, variables, refuse);
   return (...values) => bound(values);

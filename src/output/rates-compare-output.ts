@@ -87,7 +87,7 @@ function sensitivityLines({ abundances }: RatesCompareResults): string[] {
     .filter(([name, { range }]) => name !== HIDDEN && range !== undefined)
     .map(([name, { sensitivity, range }]) => [
       `  ${abundanceLabel(name)}`,
-      sensitivity.toFixed(4),
+      (Math.abs(sensitivity) < 5e-5 ? 0 : sensitivity).toFixed(4),
       range!.map((T9) => T9.toPrecision(2)).join(" to "),
     ]);
   if (rows.length === 0) return ["Where the rate matters", "  no abundance of this network responds to it"];

@@ -59,6 +59,8 @@ export async function answerRequest(
   kept: Kept,
 ): Promise<Envelope> {
   if (typeof command !== "string" || !Object.hasOwn(ANSWERERS, command)) {
+    if (command === "report")
+      throw new InputError("command", "report is not offered in batch: it is a page of HTML; run emberline report");
     const shown =
       command === undefined ? "no command" : `unknown command ${String(JSON.stringify(command)).slice(0, 100)}`;
     const nearest = typeof command === "string" ? suggestNearest(command, REQUESTS) : undefined;

@@ -15,7 +15,11 @@ export async function run(options: Options): Promise<void> {
     const others = Object.keys(toKeys(options));
     if (others.length > 0 || options.resume === true)
       throw new InputError("conflict", `--join: takes everything from the parts; leave out ${others[0] ?? "--resume"}`);
-    return joinParts(parts, options.out);
+    return joinParts(parts, options.out).catch((error: unknown) => {
+      if (!(error instanceof InputError) || error.code === "unwritable") throw error;
+      const file = parts.some((part) => error.message.startsWith(part));
+      throw new InputError(error.code, `--join${file ? " " : ": "}${error.message}`);
+    });
   }
   if (options.part !== undefined && options.format !== "csv" && options.format !== "ecsv")
     throw new InputError("conflict", `--part: needs --format csv or ecsv, which --join reads`);

@@ -12,7 +12,8 @@ export async function run({ dir, ...options }: Options): Promise<void> {
   let found: RatesCheckResults | undefined;
   await answerCommand(options as Options, {
     compute: async (_, ours) => {
-      const opened = dir === undefined ? { library: ours, prefix: OUR_FOLDER } : openFolder(dir as string);
+      const opened =
+        dir === undefined ? { library: ours, prefix: OUR_FOLDER } : openFolder(dir as string, dir as string);
       const answer = checkRates({ folder: opened.prefix, ...opened }, opened.library);
       found = answer.results;
       return answer;

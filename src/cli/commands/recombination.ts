@@ -9,6 +9,8 @@ import type { Options } from "../options.ts";
 export async function run(options: Options): Promise<void> {
   if (options.z !== undefined && options.chart !== undefined)
     throw new InputError("conflict", "--z and --chart: a chart needs all redshifts; give one of them");
+  if (options.budget === true && options.chart !== undefined)
+    throw new InputError("conflict", "--budget and --chart: there is no chart of the budget; give one of them");
   return answerCommand(options, {
     compute: computeRecombination,
     text: recombinationText,
