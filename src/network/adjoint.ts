@@ -1,6 +1,6 @@
 /** Discrete adjoint of the written-out Rosenbrock step: gradients of final quantities with respect to every flux. */
 import { RODAS4 } from "../numerics/rosenbrock-coefficients.ts";
-import type { CompiledNetwork } from "./compile.ts";
+import type { CompiledNetwork, NetworkStructure } from "./compile.ts";
 import type { Elimination } from "./elimination.ts";
 
 const { a, C, c: C_POINTS, d: D } = RODAS4;
@@ -23,8 +23,11 @@ export interface ReactionWeight {
   load(s: number, value: Float64Array, slope: Float64Array): void;
 }
 
-/** Solves (LU)^T x = b in place with the factors of the elimination (inverse diagonal). */
-export function transposedSolver(plan: Elimination): (values: Float64Array, b: Float64Array) => void {
+/**
+ * Solves (LU)^T x = b in place for several right-hand sides at once, b[row * width + x], with the factors of the
+ * elimination (inverse diagonal).
+ */
+export function transposedSolver(plan: Elimination): (values: Float64Array, b: Float64Array, width: number) => void {
   const { forward, backward } = plan;
   const lower: number[] = [];
   for (let at = 0; at < forward.length; at += 2 + 2 * forward[at + 1]) lower.push(at);
@@ -32,19 +35,50 @@ export function transposedSolver(plan: Elimination): (values: Float64Array, b: F
   for (let at = 0; at < backward.length; at += 3 + 2 * backward[at + 2]) upper.push(at);
   lower.reverse();
   upper.reverse();
-  return (values, b) => {
+  return (values, b, width) => {
     for (const at of upper) {
-      const x = b[backward[at]] * values[backward[at + 1]];
-      b[backward[at]] = x;
+      const row = backward[at] * width;
+      const inverse = values[backward[at + 1]];
+      for (let x = 0; x < width; x++) b[row + x] *= inverse;
       const end = at + 3 + 2 * backward[at + 2];
-      for (let e = at + 3; e < end; e += 2) b[backward[e + 1]] -= values[backward[e]] * x;
+      for (let e = at + 3; e < end; e += 2) {
+        const value = values[backward[e]];
+        const target = backward[e + 1] * width;
+        for (let x = 0; x < width; x++) b[target + x] -= value * b[row + x];
+      }
     }
     for (const at of lower) {
-      const x = b[forward[at]];
+      const row = forward[at] * width;
       const end = at + 2 + 2 * forward[at + 1];
-      for (let e = at + 2; e < end; e += 2) b[forward[e + 1]] -= values[forward[e]] * x;
+      for (let e = at + 2; e < end; e += 2) {
+        const value = values[forward[e]];
+        const target = forward[e + 1] * width;
+        for (let x = 0; x < width; x++) b[target + x] -= value * b[row + x];
+      }
     }
   };
+}
+
+/** A flux that is followed: its particles and how many they are. */
+interface FollowedFlux {
+  readonly f: number;
+  readonly sign: 1 | -1;
+  readonly p0: number;
+  readonly p1: number;
+  readonly p2: number;
+  readonly bodies: number;
+}
+
+function followedFluxes({ particles }: NetworkStructure, count: number, n: number): FollowedFlux[] {
+  const list: FollowedFlux[] = [];
+  for (let f = 0; f < 2 * count; f++) {
+    const trio = [...particles.subarray(3 * f, 3 * f + 3)];
+    if (trio.includes(n + 1)) continue;
+    // "None" (n) always comes after the particles.
+    const bodies = trio.filter((i) => i < n).length;
+    list.push({ f, sign: f % 2 === 0 ? 1 : -1, p0: trio[0], p1: trio[1], p2: trio[2], bodies });
+  }
+  return list;
 }
 
 /**
@@ -72,7 +106,10 @@ export function adjointGradients(
   const count = reactions.length;
   const solve = transposedSolver(elimination);
   const parameters = weights.length;
-  const gradient = lambda.map(() => new Float64Array(parameters * count));
+  // Quantities side by side: entry (k, x) of a nuclide or reaction k and quantity x stands at k * width + x.
+  const width = lambda.length;
+  const size = n * width;
+  const sums = new Float64Array(parameters * count * width);
   const padded = (fill: number) => {
     const array = new Float64Array(n + 2);
     array[n] = fill;
@@ -81,15 +118,19 @@ export function adjointGradients(
   const Y = padded(1);
   const W = Array.from({ length: STAGES }, () => padded(1));
   const U = Array.from({ length: STAGES }, () => padded(0));
-  const bar = Array.from({ length: STAGES }, () => new Float64Array(n));
-  const ybar = new Float64Array(n);
-  const wbar = new Float64Array(n + 2);
-  const other = new Float64Array(n + 2);
-  const flow = new Float64Array(count);
+  const bar = Array.from({ length: STAGES }, () => new Float64Array(size));
+  const ybar = new Float64Array(size);
+  lambda.forEach((l, x) => {
+    for (let k = 0; k < n; k++) ybar[k * width + x] = l[k];
+  });
+  const wbar = new Float64Array(size);
+  const flow = new Float64Array(count * width);
+  const followed = followedFluxes(structure, count, n);
   // term[i][q * count + k]: what v_i . S_k multiplies in the gradient of reaction k by parameter q.
   const term = Array.from({ length: STAGES }, () => new Float64Array(parameters * count));
   const fluxes = 2 * count;
-  const [atStage, atStart, drift, late, early, slopes] = Array.from({ length: 6 }, () => new Float64Array(fluxes));
+  const [atStage, atStart, drift, late, unused] = Array.from({ length: 5 }, () => new Float64Array(fluxes));
+  const [earlies, rises] = [0, 1].map(() => weights.map(() => new Float64Array(fluxes)));
   for (let at = steps.length - 1; at >= 0; at--) {
     const step = steps[at];
     const { h, rows, slope, factors } = step;
@@ -102,6 +143,9 @@ export function adjointGradients(
       for (let j = 0; j < coefficients.length; j++) for (let k = 0; k < n; k++) w[k] += coefficients[j] * U[j][k];
       if (i === 5) for (let k = 0; k < n; k++) w[k] += U[4][k];
     }
+    weights.forEach((weight, q) => {
+      weight.load(step.s, earlies[q], rises[q]);
+    });
     // The three parts of every flux at every stage, then their weighted sums for each parameter and reaction.
     for (let i = 0; i < STAGES; i++) {
       const c = rows[i];
@@ -123,78 +167,112 @@ export function adjointGradients(
       const point = step.s + (i < 4 ? C_POINTS[i] : 1) * h;
       const terms = term[i];
       for (let q = 0; q < parameters; q++) {
-        weights[q].load(point, late, slopes);
-        weights[q].load(step.s, early, slopes);
+        weights[q].load(point, late, unused);
+        const early = earlies[q];
+        const rise = rises[q];
         for (let f = 0; f < fluxes; f++) {
-          const value = atStage[f] * late[f] + atStart[f] * early[f] + drift[f] * slopes[f];
+          const value = atStage[f] * late[f] + atStart[f] * early[f] + drift[f] * rise[f];
           const e = q * count + (f >> 1);
           if (f % 2 === 0) terms[e] = value;
           else terms[e] += value;
         }
       }
     }
-    for (let x = 0; x < lambda.length; x++) {
-      const l = lambda[x];
-      ybar.set(l);
-      const last = a[a.length - 1];
-      for (let i = 0; i < STAGES; i++) {
-        const b = i < last.length ? last[i] : 1;
-        for (let k = 0; k < n; k++) bar[i][k] = b * l[k];
-      }
-      for (let i = STAGES - 1; i >= 0; i--) {
-        const v = bar[i];
-        solve(factors, v);
-        // v . S_k for every reaction.
-        for (let k = 0; k < count; k++) {
-          let sum = 0;
-          for (let e = start[k]; e < start[k + 1]; e++) sum += change[e] * v[nuclide[e]];
-          flow[k] = sum;
-        }
-        const g = gradient[x];
-        const terms = term[i];
-        for (let q = 0, e = 0; q < parameters; q++) for (let k = 0; k < count; k++, e++) g[e] += flow[k] * terms[e];
-        // J(w_i)^T v to the stage argument; slope and second-derivative terms to y.
-        wbar.fill(0);
-        other.fill(0);
-        const c = rows[i];
-        const c0 = rows[0];
-        const hd = h * D[i];
-        const w = W[i];
-        const u = U[i];
-        for (let f = 0, p = 0; f < fluxes; f++, p += 3) {
-          const s = f % 2 === 0 ? flow[f >> 1] : -flow[f >> 1];
-          if (s === 0) continue;
-          const p0 = particles[p];
-          const p1 = particles[p + 1];
-          const p2 = particles[p + 2];
-          const direct = s * c[f];
-          const sloping = s * hd * slope[f];
-          const along = s * c0[f];
-          const w0 = w[p0];
-          const w1 = w[p1];
-          const w2 = w[p2];
-          const y0 = Y[p0];
-          const y1 = Y[p1];
-          const y2 = Y[p2];
-          wbar[p0] += direct * w1 * w2;
-          wbar[p1] += direct * w0 * w2;
-          wbar[p2] += direct * w0 * w1;
-          other[p0] += sloping * y1 * y2 + along * (u[p1] * y2 + y1 * u[p2]);
-          other[p1] += sloping * y0 * y2 + along * (u[p0] * y2 + y0 * u[p2]);
-          other[p2] += sloping * y0 * y1 + along * (u[p0] * y1 + y0 * u[p1]);
-        }
-        for (let k = 0; k < n; k++) ybar[k] += wbar[k] + other[k];
-        const coefficients = i < a.length ? a[i] : last;
-        for (let j = 0; j < coefficients.length; j++)
-          for (let k = 0; k < n; k++) bar[j][k] += coefficients[j] * wbar[k];
-        if (i === 5) for (let k = 0; k < n; k++) bar[4][k] += wbar[k];
-        for (let j = 0; j < i; j++) {
-          const cij = C[i][j] / h;
-          for (let k = 0; k < n; k++) bar[j][k] += cij * v[k];
+    const last = a[a.length - 1];
+    for (let i = 0; i < STAGES; i++) {
+      const b = i < last.length ? last[i] : 1;
+      const bi = bar[i];
+      for (let e = 0; e < size; e++) bi[e] = b * ybar[e];
+    }
+    for (let i = STAGES - 1; i >= 0; i--) {
+      const v = bar[i];
+      solve(factors, v, width);
+      // v . S_k for every reaction.
+      for (let k = 0; k < count; k++) {
+        const row = k * width;
+        for (let x = 0; x < width; x++) flow[row + x] = 0;
+        for (let e = start[k]; e < start[k + 1]; e++) {
+          const by = change[e];
+          const from = nuclide[e] * width;
+          for (let x = 0; x < width; x++) flow[row + x] += by * v[from + x];
         }
       }
-      l.set(ybar);
+      const terms = term[i];
+      for (let q = 0, e = 0; q < parameters; q++)
+        for (let k = 0; k < count; k++, e++) {
+          const value = terms[e];
+          const row = k * width;
+          const into = e * width;
+          for (let x = 0; x < width; x++) sums[into + x] += flow[row + x] * value;
+        }
+      // J(w_i)^T v to the stage argument; slope and second-derivative terms to y alone.
+      wbar.fill(0);
+      const c = rows[i];
+      const c0 = rows[0];
+      const hd = h * D[i];
+      const w = W[i];
+      const u = U[i];
+      for (const { f, sign, p0, p1, p2, bodies } of followed) {
+        const direct = sign * c[f];
+        const sloping = sign * hd * slope[f];
+        const along = sign * c0[f];
+        const row = (f >> 1) * width;
+        const r0 = p0 * width;
+        if (bodies === 1) {
+          for (let x = 0; x < width; x++) {
+            wbar[r0 + x] += flow[row + x] * direct;
+            ybar[r0 + x] += flow[row + x] * sloping;
+          }
+        } else if (bodies === 2) {
+          const r1 = p1 * width;
+          const w0 = direct * w[p1];
+          const w1 = direct * w[p0];
+          const y0 = sloping * Y[p1] + along * u[p1];
+          const y1 = sloping * Y[p0] + along * u[p0];
+          for (let x = 0; x < width; x++) {
+            const s = flow[row + x];
+            wbar[r0 + x] += s * w0;
+            wbar[r1 + x] += s * w1;
+            ybar[r0 + x] += s * y0;
+            ybar[r1 + x] += s * y1;
+          }
+        } else {
+          const r1 = p1 * width;
+          const r2 = p2 * width;
+          const w0 = direct * w[p1] * w[p2];
+          const w1 = direct * w[p0] * w[p2];
+          const w2 = direct * w[p0] * w[p1];
+          const y0 = sloping * Y[p1] * Y[p2] + along * (u[p1] * Y[p2] + Y[p1] * u[p2]);
+          const y1 = sloping * Y[p0] * Y[p2] + along * (u[p0] * Y[p2] + Y[p0] * u[p2]);
+          const y2 = sloping * Y[p0] * Y[p1] + along * (u[p0] * Y[p1] + Y[p0] * u[p1]);
+          for (let x = 0; x < width; x++) {
+            const s = flow[row + x];
+            wbar[r0 + x] += s * w0;
+            wbar[r1 + x] += s * w1;
+            wbar[r2 + x] += s * w2;
+            ybar[r0 + x] += s * y0;
+            ybar[r1 + x] += s * y1;
+            ybar[r2 + x] += s * y2;
+          }
+        }
+      }
+      for (let e = 0; e < size; e++) ybar[e] += wbar[e];
+      const coefficients = i < a.length ? a[i] : last;
+      for (let j = 0; j < coefficients.length; j++) {
+        const aij = coefficients[j];
+        const bj = bar[j];
+        for (let e = 0; e < size; e++) bj[e] += aij * wbar[e];
+      }
+      if (i === 5) for (let e = 0; e < size; e++) bar[4][e] += wbar[e];
+      for (let j = 0; j < i; j++) {
+        const cij = C[i][j] / h;
+        const bj = bar[j];
+        for (let e = 0; e < size; e++) bj[e] += cij * v[e];
+      }
     }
   }
-  return gradient;
+  lambda.forEach((l, x) => {
+    for (let k = 0; k < n; k++) l[k] = ybar[k * width + x];
+  });
+  return lambda.map((_, x) => Float64Array.from({ length: parameters * count }, (__, e) => sums[e * width + x]));
 }
