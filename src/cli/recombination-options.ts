@@ -1,6 +1,7 @@
 /** The options that only `recombination` takes, and those that it takes with another meaning. */
 import { Option } from "commander";
 import { InputError } from "../numerics/check.ts";
+import { formatNumber } from "../output/text.ts";
 import { DEFAULTS } from "../parameters/cosmology.ts";
 import { SWITCH_EFFECTS } from "../recombination/effects.generated.ts";
 import { RECOMBINATION_TOLERANCE } from "../recombination/inputs.ts";
@@ -24,7 +25,7 @@ export function parseRedshiftList(text: string): number[] {
 function effectOf(name: string): string {
   const { zStar, xe } = SWITCH_EFFECTS[name];
   const [z, change] = Object.entries(xe).reduce((a, b) => (Math.abs(b[1]) > Math.abs(a[1]) ? b : a));
-  const signed = (value: number) => `${value > 0 ? "+" : ""}${Number(value.toPrecision(2))}`;
+  const signed = (value: number) => `${value > 0 ? "+" : value < 0 ? "-" : ""}${formatNumber(Math.abs(value), 2)}`;
   return Math.abs(zStar) > 0.001 ? `z_star ${signed(zStar)}` : `x_e ${signed(100 * change)} % at z = ${z}`;
 }
 

@@ -311,9 +311,30 @@ export function tabulateOver(history: ThermalHistory, xiE: number, switches: Wea
   return tabulateWeakRates({ start, end, count }, ratio.value, xiE, switches);
 }
 
-/** The abundances a network reports. */
+/** Abundances that not every network can make, and the nuclides of which one must be there. */
+const MADE_OF: Readonly<Partial<Record<AbundanceName, readonly string[]>>> = {
+  tToH: ["t"],
+  li6ToH: ["li6", "he6"],
+  li7ToH: ["li7", "be7"],
+  be9ToH: ["be9", "li9"],
+  b10ToH: ["b10", "c10"],
+  b11ToH: ["b11", "c11", "be11"],
+};
+
+function namesFor(network: string, nuclides: ReadonlySet<string>): AbundanceName[] {
+  const names = [...ABUNDANCE_NAMES, ...(HEAVY_NETWORKS.includes(network) ? HEAVY_ABUNDANCE_NAMES : [])];
+  return names.filter((name) => MADE_OF[name]?.some((id) => nuclides.has(id)) ?? true);
+}
+
+/** The abundances a network reports: none of nuclides that it does not hold. */
 export function reportedNames(ctx: RunContext): AbundanceName[] {
-  return [...ABUNDANCE_NAMES, ...(HEAVY_NETWORKS.includes(ctx.data.name) ? HEAVY_ABUNDANCE_NAMES : [])];
+  return namesFor(ctx.data.name, new Set(ctx.data.nuclides.map(({ id }) => id)));
+}
+
+/** The same, before anything is computed. */
+export function namesOf(model: Model, p: CosmologyParameters): AbundanceName[] {
+  const reactions = model.selection(p).map(({ reaction }) => reaction);
+  return namesFor(p.network, new Set(reactions.flatMap(({ reactants, products }) => [...reactants, ...products])));
 }
 
 /** Their values from a final state. */

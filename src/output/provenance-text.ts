@@ -56,7 +56,9 @@ export function cosmologyLines(c: CosmologyParameters): string[] {
     if (value !== 0) parts.push(`${name} ${value}`);
   const lines = entry("cosmology", parts.map(held).join(", "));
   if (c.expansion.trim() !== "1") lines.push(...entry("expansion", `H(T) times ${c.expansion}`));
-  const scaled = Object.entries(c.scales).map(([id, factor]) => held(`${formatReaction(parseReactionName(id))} × ${factor}`));
+  const scaled = Object.entries(c.scales).map(([id, factor]) =>
+    held(`${formatReaction(parseReactionName(id))} × ${factor}`),
+  );
   if (scaled.length > 0) lines.push(...entry("scaled", scaled.join(", ")));
   return lines;
 }

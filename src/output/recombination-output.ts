@@ -30,7 +30,7 @@ function section(title: string, lines: readonly Line[]): string[] {
   return ["", title, ...lines.flatMap(([, , text], i) => wrap(text, pad(heads[i], width), " ".repeat(width)))];
 }
 
-function scattering(r: RecombinationResults): Line[] {
+function scattering(r: RecombinationResults, nEff: number): Line[] {
   return [
     ["z_star", r.zStar.toFixed(3), "optical depth 1, recombination alone, counted from z = 0"],
     ["z_drag", r.zDrag.toFixed(3), "drag depth 1: Thomson integrand over R = 3 rho_b/(4 rho_gamma)"],
@@ -39,7 +39,11 @@ function scattering(r: RecombinationResults): Line[] {
     ["D_M", `${r.DMStar_Mpc.toFixed(2)} Mpc`, "comoving distance to z_star"],
     ["100 theta_star", r.theta100Star.toFixed(5), "100 r_star/D_M"],
     ["k_D", `${r.kD_invMpc.toFixed(5)} /Mpc`, "photon diffusion down to z_star (Kaiser 1983)"],
-    ["z_eq", r.zEq.toFixed(1), "omega_b + omega_c against photons and three massless neutrinos"],
+    [
+      "z_eq",
+      r.zEq.toFixed(1),
+      `omega_b + omega_c against photons${nEff > 0 ? " and three massless neutrinos" : ", as there are no neutrinos"}`,
+    ],
     ["T at z_star", `${r.temperatureAtStar_K.toFixed(1)} K`, "radiation temperature"],
     ["age at z_star", `${Math.round(r.ageAtStar_yr)} yr`, "Julian years of 365.25 d"],
     ["age today", `${r.ageToday_Gyr.toFixed(4)} Gyr`, "the same"],
@@ -162,7 +166,7 @@ export function recombinationText(answer: Envelope<RecombinationResults>): strin
   const r = answer.results;
   const lines = [
     titleLine("Recombination and last scattering", answer.version),
-    ...section("Last scattering and baryon drag", scattering(r)),
+    ...section("Last scattering and baryon drag", scattering(r, answer.cosmology.nEff)),
     ...section("Ionisation", ionisation(r)),
     ...section("Visibility", visibility(r)),
     "",

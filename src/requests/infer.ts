@@ -3,8 +3,8 @@ import { runInference } from "../inference/infer.ts";
 import { DEFAULT_SET, parseObserved } from "../inference/observations.ts";
 import { type FreeKey, parseFree, parsePriors } from "../inference/priors.ts";
 import type { AskTheory, TheoryQuestion } from "../inference/theory-points.ts";
+import { namesOf } from "../model/prepare.ts";
 import type { RateLibrary } from "../nuclear/library.ts";
-import { ABUNDANCE_NAMES } from "../nucleosynthesis/abundances.ts";
 import { addCounts } from "../nucleosynthesis/run.ts";
 import { InputError } from "../numerics/check.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
@@ -65,12 +65,19 @@ export async function computeInfer(
   const parameters = model.parameters();
   const data = parseObserved(observed ?? DEFAULT_SET, library.files);
   const priors = parsePriors(prior, freeKeys, library.files, parameters.tCmb);
+  const names = namesOf(model, parameters);
+  const missing = [...data.fitted, ...data.compared].find(({ abundance }) => !names.includes(abundance));
+  if (missing !== undefined)
+    throw new InputError(
+      "observed",
+      `observed ${missing.abundance}: network ${parameters.network} does not make it; leave it out, or choose another network`,
+    );
   const asking = askEngine(engine, keys);
   const { warnings, ...results } = await runInference(
     { observed: data, priors, tCmb: parameters.tCmb, seed: parameters.seed },
     asking.ask,
     // Source 0 is tau_n: where it is free its error is the posterior's.
-    { names: ABUNDANCE_NAMES, ...(freeKeys.includes("tauN") ? { freeSource: 0 } : {}) },
+    { names, ...(freeKeys.includes("tauN") ? { freeSource: 0 } : {}) },
     (share) => progress?.(share, "theory of the inference"),
   );
   const bestKeys = bestOf(freeKeys, results);

@@ -1,11 +1,7 @@
 /** What `scan` and `grid` share: from axes to a table of abundances with errors at every point. */
+import { namesOf } from "../model/prepare.ts";
 import type { RateLibrary } from "../nuclear/library.ts";
-import {
-  ABUNDANCE_NAMES,
-  type AbundanceName,
-  HEAVY_ABUNDANCE_NAMES,
-  HEAVY_NETWORKS,
-} from "../nucleosynthesis/abundances.ts";
+import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
 import { addCounts } from "../nucleosynthesis/run.ts";
 import { InputError } from "../numerics/check.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
@@ -90,19 +86,18 @@ export async function prepareSweep(
     );
   }
   const plan = planSweep(texts, base, (name) => library.reactionId(name));
-  const network = base.network;
-  const heavy = network !== undefined && HEAVY_NETWORKS.includes(network);
-  const names: AbundanceName[] = [...ABUNDANCE_NAMES, ...(heavy ? HEAVY_ABUNDANCE_NAMES : [])];
+  const model = await modelFor(base, library);
+  const parameters = model.parameters();
+  const names = namesOf(model, parameters);
   const { first, end } = part === undefined ? { first: 0, end: plan.count } : partRange(plan.count, part);
   requireFits(command, end - first, plan.axes.length + (base.errors === "none" ? 1 : 2) * names.length);
-  const model = await modelFor(base, library);
   model.parameters(plan.overrides(0));
   return {
     command,
     plan,
     base,
-    parameters: model.parameters(),
-    provenance: nucleosynthesisProvenance(model, model.parameters()),
+    parameters,
+    provenance: nucleosynthesisProvenance(model, parameters),
     names,
     first,
     end,

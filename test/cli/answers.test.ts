@@ -56,6 +56,30 @@ test("csv and ecsv carry the digits of json", async () => {
   }
 });
 
+test("what was scaled and chosen stands in every format, by its id", async () => {
+  const chosen = ["--scale", "d(p,g)he3=1.1", "--scale", "n_p=1.01", "--evaluation", "d(p,g)he3=mossa2020"];
+  const csv = (await runMain(...fast, ...chosen, "--format", "csv")).out;
+  expect(csv).toContain("\n# scales: d-p_gamma-he3=1.1 n_p=1.01\n");
+  expect(csv).toContain("\n# evaluations: d-p_gamma-he3=mossa2020\n");
+  const ecsv = (await runMain(...fast, ...chosen, "--format", "ecsv")).out;
+  expect(ecsv).toContain('\n#   scales: "d-p_gamma-he3=1.1 n_p=1.01"\n');
+  const scan = await runMain("scan", "--over", "eta10=5,6", ...fast, ...chosen, "--format", "csv");
+  expect(scan.out).toContain("\n# scales: d-p_gamma-he3=1.1 n_p=1.01\n");
+  expect((await runMain(...fast, ...chosen)).out).toContain("d(p,γ)³He × 1.1");
+});
+
+test("an abundance of nuclides that the network does not hold is in no format; a larger network has it", async () => {
+  const names = async (...args: string[]) =>
+    Object.keys(JSON.parse((await runMain(...args, "--format", "json")).out).results.abundances);
+  expect(await names(...fast)).toEqual(["Yp", "YpMass", "dToH", "tToH", "he3ToH", "li7ToH"]);
+  expect(await names("--errors", "none")).toContain("li6ToH");
+  for (const command of [[], ["scan", "--over", "eta10=5,6"]]) {
+    const { out } = await runMain(...command, ...fast, "--format", "csv");
+    expect(out).toContain("he3ToH,li7ToH");
+    expect(out).not.toContain("li6ToH");
+  }
+});
+
 test("--out holds what standard output would, and nothing else is printed", async () => {
   const file = join(mkdtempSync(join(tmpdir(), "emberline-out-")), "a.json");
   const { status, out, err } = await runMain(...fast, "--format", "json", "--out", file);
