@@ -6,7 +6,8 @@ import { describe, expect, test } from "vitest";
 import { displayWidth, TEXT_WIDTH } from "../../src/output/text.ts";
 import { runMain } from "./run-main.ts";
 
-const fast = ["infer", "--network", "twelve", "--jobs", "1"];
+const plain = ["infer", "--network", "twelve"];
+const fast = [...plain, "--jobs", "1"];
 const json = async (...args: string[]) => {
   const { status, out, err } = await runMain(...fast, ...args, "--format", "json");
   expect(status, err).toBe(0);
@@ -66,7 +67,8 @@ test("the text fits the terminal; csv and ecsv hold the table", async () => {
 });
 
 test("a run repeats itself in every digit, on one thread and on two", async () => {
-  const numbers = async (jobs: string) => (await json("--jobs", jobs)).results;
+  const numbers = async (jobs: string) =>
+    JSON.parse((await runMain(...plain, "--jobs", jobs, "--format", "json")).out).results;
   const first = await numbers("1");
   expect(await numbers("1")).toEqual(first);
   expect(await numbers("2")).toEqual(first);

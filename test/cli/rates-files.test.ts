@@ -34,6 +34,15 @@ describe("check", () => {
     expect(status, out).toBe(0);
     expect(out).not.toContain("rates/li7-n_gamma-li8");
   });
+  test("a file that is no text is named once", async () => {
+    const at = folder();
+    mkdirSync(join(at, "t-d_n-he4"));
+    writeFileSync(join(at, "t-d_n-he4/smith2027.ecsv"), Buffer.from([0x80, 0xff, 0xfe, 0x80]));
+    const { status, out } = await runMain("rates", "check", at);
+    expect(status).toBe(2);
+    expect(out).toContain(`${at}/t-d_n-he4/smith2027.ecsv: cannot be read (not UTF-8 text)\n`);
+    expect(out.match(/smith2027\.ecsv/g)).toHaveLength(1);
+  });
   const damages: readonly (readonly [string, (text: string) => string, RegExp])[] = [
     ["a row that jumps", (text) => text.replace(/^0\.1 4\.5/m, "0.1 5.5"), /smith2027\.ecsv:47: rate jumps/],
     ["a word for a number", (text) => text.replace(/^0\.1 4\.5\S*/m, "0.1 many"), /smith2027\.ecsv:47: rate = many/],
@@ -249,7 +258,7 @@ describe("refused: one line, exit status 2", () => {
     ],
     ["a wrong unit", make(bad(S_FACTOR.replace("S_MeV_b", "S_MeV"))), /bad\.csv:1: column S_MeV: unknown unit/],
     ["a unit row of another kind", make(bad(S_FACTOR.replace(lines[0], "E,S,sigma\nMeV,mb,mb"))), /bad\.csv:\d: /],
-    ["a table that is a folder", make(tmpdir()), "no such file"],
+    ["a table that is a folder", make(tmpdir()), "is a directory; give a file"],
   ];
   test.each(cases)("%s", async (_, args, message) => {
     const { status, out, err } = await runMain(...args);

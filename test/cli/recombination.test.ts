@@ -35,6 +35,20 @@ test("JSON holds every key, its table, and the source of every constant", async 
   expect(solver.steps).toBeGreaterThan(100);
 });
 
+test("the help and the answer say the same of every ingredient", async () => {
+  const help = (await runMain("help", "recombination")).out.replace(/\s+/g, " ");
+  const text = (await runMain("recombination", "--yp", "0.2454")).out;
+  const row = /hydrogen-bottleneck +in +(\S+)/.exec(text);
+  expect(row?.[1]).toMatch(/^\+\d+$/);
+  expect(help).toMatch(new RegExp(`hydrogen-bottleneck \\([^;]*: z_star \\${row?.[1]}\\)`));
+});
+
+test("without neutrinos the line of z_eq says so", async () => {
+  const text = (await runMain("recombination", "--yp", "0.2454", "--n-eff", "0")).out.replace(/\s+/g, " ");
+  expect(text).toContain("omega_b + omega_c against photons, as there are no neutrinos");
+  expect(text).not.toContain("three massless");
+});
+
 test("helium is that of the nucleosynthesis run of the same cosmology", async () => {
   const network = ["--network", "twelve"];
   const { results, provenance } = await answer(...network, "--omega-b", "0.02", "--n-eff", "4", "--z", "1000");
@@ -114,7 +128,7 @@ test("text names the definitions, within 80 columns", async () => {
 
 describe("bad input", () => {
   test.each([
-    [["--yp", "1.5"], "--yp 1.5: out of range; helium mass fraction"],
+    [["--yp", "1.5"], "--yp 1.5: out of range; accepted are 0 to 0.99"],
     [["--yp", "-0.1"], "0 to 0.99"],
     [["--h0", "0"], "20 to 150"],
     [["--alpha-factor", "5"], "0.5 to 2"],

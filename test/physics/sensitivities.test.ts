@@ -1,9 +1,8 @@
 // Logarithmic sensitivities of the abundances: fit exponents of the literature, slopes, and exact scaling identities.
 import { describe, expect, test } from "vitest";
 import { computeErrorBudget } from "../../src/model/error-budget.ts";
-import { prepareModel } from "../../src/model/prepare.ts";
+import { prepareModel, reportedNames } from "../../src/model/prepare.ts";
 import { loadRates } from "../../src/node/load-rates.ts";
-import { ABUNDANCE_NAMES } from "../../src/nucleosynthesis/abundances.ts";
 import type { Keys } from "../../src/parameters/cosmology.ts";
 import { centralSensitivities, relativeStep } from "../../src/uncertainty/sensitivity.ts";
 
@@ -139,7 +138,7 @@ describe("slopes at the default cosmology", () => {
         tolerance: p.tolerance,
       }).values;
     });
-    ABUNDANCE_NAMES.forEach((abundance, x) => {
+    reportedNames(context).forEach((abundance, x) => {
       const ours = sensitivities[abundance];
       if (ours !== undefined)
         steps.forEach(({ name }, k) => {

@@ -46,7 +46,7 @@ test("refused: no folder, a file, nothing in it, a folder named otherwise, text 
   expect(() => loadRates(join(folder, "none"))).toThrow(/none: no such folder/);
   const file = join(folder, "x");
   writeFileSync(file, "");
-  expect(() => loadRates(file)).toThrow(/no such folder/);
+  expect(() => loadRates(file)).toThrow(/is a file, not a folder/);
   expect(() => loadRates(folder)).toThrow(/holds no reaction folder, networks\/ or nuclides\.csv/);
   mkdirSync(join(folder, "p-d_gamma-he3"));
   expect(() => loadRates(folder)).toThrow(/name this folder d-p_gamma-he3/);

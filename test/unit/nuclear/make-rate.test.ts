@@ -131,13 +131,19 @@ describe("an S-factor file is refused for", () => {
     [
       "a unit row with a cross section",
       inMeV.replace(/^.*\n/, "E,S,sigma\nMeV,keV,keV b\n"),
-      /mine\.csv:2: unit of S is keV/,
+      /mine\.csv:2: unit of S: keV is not known; accepted are eV b, keV b or MeV b/,
     ],
     ["no S", "E_MeV,sigma_MeV_b\n1,2\n", /no column for the S-factor \(S_MeV_b\)/],
     ["a column unknown", "E_MeV,S_MeV_b,x\n1,2,3\n", /column x: expected E_MeV/],
     ["a word", inMeV.replace("\n0,", "\nzero,"), /mine\.csv:2: E_MeV = zero: must be a number/],
     ["a ragged row", inMeV.replace("\n0,", "\n0,1,"), /mine\.csv:2: 4 cells/],
-    ["nothing", "", /mine\.csv:1: no rows/],
+    ["nothing", "", /mine\.csv:1: the file is empty/],
+    ["a header alone", "E_MeV,S_MeV_b\n", /mine\.csv:1: no rows below the header/],
+    [
+      "an unknown unit of energy",
+      "E,S\nfoo,MeV b\n1,2\n",
+      /mine\.csv:2: unit of E: foo is not known; accepted are eV, keV/,
+    ],
     ["a resonance without strength", `# resonance: E = 0.1 MeV\n${inMeV}`, /mine\.csv:1: write `# resonance: E = /],
     ["a resonance in other units", `# resonance: E = 0.1 GeV, omega_gamma = 1 eV\n${inMeV}`, /mine\.csv:1: write/],
   ])("%s", (_, text, message) => {

@@ -34,6 +34,18 @@ test("what a thread keeps from request to request changes no answer", async () =
   }
 });
 
+test.each([
+  [{ command: "report" }, "report is not offered in batch"],
+  [{ command: "abundances", ...twelve, samples: 10 }, "errors = none and samples = 10"],
+  [
+    { command: "abundances", ...twelve, scales: { "d(p,g)he3": 1.1, "d-p_gamma-he3": 1.2 } },
+    "scale d-p_gamma-he3: d-p_gamma-he3 is given twice",
+  ],
+])("%j is refused", async (request, message) => {
+  const { error } = await ask(JSON.stringify(request));
+  expect(error.message).toContain(message);
+});
+
 test("a scan may be asked for", async () => {
   const keys = { ...twelve, over: ["eta10=4,5"] };
   const found = await ask(JSON.stringify({ command: "scan", ...keys }));
