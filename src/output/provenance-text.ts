@@ -39,21 +39,26 @@ function measured(value: number, sigma: number): string {
   return sigma > 0 ? formatEstimate(value, sigma) : String(value);
 }
 
-/** The parameters in words; those at zero or at their neutral value are named only when set. */
-export function cosmologyLines(c: CosmologyParameters): string[] {
+/**
+ * The parameters in words; those at zero or at their neutral value are named only when set, those along an axis of a
+ * scan (left out of the answer's cosmology) not at all.
+ */
+export function cosmologyLines(
+  c: Partial<CosmologyParameters> & Pick<CosmologyParameters, "expansion" | "scales">,
+): string[] {
   const parts = [
-    `omega_b ${measured(c.omegaB, c.omegaBSigma)}`,
-    `eta10 ${formatNumber(c.eta10)}`,
-    `N_eff ${formatNumber(c.nEff, 4)}`,
-    `tau_n ${measured(c.tauN, c.tauNSigma)} s`,
-    `T_CMB ${c.tCmb} K`,
+    ...(c.omegaB === undefined ? [] : [`omega_b ${measured(c.omegaB, c.omegaBSigma ?? 0)}`]),
+    ...(c.eta10 === undefined ? [] : [`eta10 ${formatNumber(c.eta10)}`]),
+    ...(c.nEff === undefined ? [] : [`N_eff ${formatNumber(c.nEff, 4)}`]),
+    ...(c.tauN === undefined ? [] : [`tau_n ${measured(c.tauN, c.tauNSigma ?? 0)} s`]),
+    ...(c.tCmb === undefined ? [] : [`T_CMB ${c.tCmb} K`]),
   ];
   for (const [name, value] of [
     ["xi_e", c.xiE],
     ["xi_mu", c.xiMu],
     ["xi_tau", c.xiTau],
   ] as const)
-    if (value !== 0) parts.push(`${name} ${value}`);
+    if (value !== undefined && value !== 0) parts.push(`${name} ${value}`);
   const lines = entry("cosmology", parts.map(held).join(", "));
   if (c.expansion.trim() !== "1") lines.push(...entry("expansion", `H(T) times ${c.expansion}`));
   const scaled = Object.entries(c.scales).map(([id, factor]) =>

@@ -1,7 +1,7 @@
 /** The answer of `scan` as text: a short table; every row goes to CSV, ECSV and JSON. */
 import { formatReaction } from "../nuclear/reaction-name.ts";
 import { abundanceLabel } from "../nucleosynthesis/labels.ts";
-import { RANGES } from "../parameters/cosmology.ts";
+import { type CosmologyParameters, RANGES } from "../parameters/cosmology.ts";
 import { provenanceLines, provenanceNotes, titleLine } from "./provenance-text.ts";
 import type { Envelope } from "./result.ts";
 import type { AxisResult, ScanResults } from "./sweep-result.ts";
@@ -79,13 +79,29 @@ export function scanText(answer: Envelope<ScanResults>): string {
 const TOGETHER: readonly (readonly string[])[] = [
   ["omegaB", "omegaBSigma", "eta10"],
   ["nEff", "deltaNEff"],
+  ["tauN", "tauNSigma"],
 ];
+
+/** The cosmology of a scan or grid: only what is the same in every row. */
+export function fixedCosmology(
+  parameters: CosmologyParameters,
+  axes: readonly { readonly key: string }[],
+): CosmologyParameters {
+  const varying = axes.flatMap(({ key }) => TOGETHER.find((keys) => keys.includes(key)) ?? [key]);
+  return Object.fromEntries(
+    Object.entries(parameters).filter(
+      ([key]) => !varying.includes(key) || (key === "tauNSigma" && parameters.errors !== "none"),
+    ),
+  ) as unknown as CosmologyParameters;
+}
 
 /** Header of CSV and ECSV: provenance with the axes, and only such parameters that are the same in every row. */
 export function sweepNotes(answer: Envelope<ScanResults>): Record<string, string | readonly string[]> {
   const { command, cosmology, ...rest } = provenanceNotes(answer);
   const varying = answer.results.axes.flatMap(({ key }) => TOGETHER.find((keys) => keys.includes(key)) ?? [key]);
-  const fixed = (cosmology as string).split(" ").filter((item) => !varying.includes(item.split("=")[0]));
+  const fixed = (cosmology as string)
+    .split(" ")
+    .filter((item) => !varying.includes(item.split("=")[0]) || item.startsWith("tauNSigma="));
   const axes = answer.results.axes.map(
     (axis) => `${axis.key}: ${axisLabel(axis)}; ${axis.count} values${axis.log ? ", even in the logarithm" : ""}`,
   );

@@ -4,6 +4,7 @@ import type { AbundanceName } from "../nucleosynthesis/abundances.ts";
 import { InputError } from "../numerics/check.ts";
 import type { Table } from "../numerics/table.ts";
 import { delimitedLines } from "../output/cell.ts";
+import { fixedCosmology } from "../output/scan-output.ts";
 import type { GridResults, InterpolationCheck } from "../output/sweep-result.ts";
 import { gridCoordinates, interpolateGrid, randomPoints } from "../sweep/grid-interpolation.ts";
 import { keysAt, parsePart } from "../sweep/plan.ts";
@@ -56,7 +57,7 @@ export async function computeGrid(
     table,
   };
   const solver = { ...counts, tolerance: parameters.tolerance };
-  return makeEnvelope("grid", parameters, results, sweep.provenance, solver, warnings);
+  return makeEnvelope("grid", fixedCosmology(parameters, plan.axes), results, sweep.provenance, solver, warnings);
 }
 
 /** Abundances that are interpolated as they are; the others, which span decades, in their logarithm. */

@@ -1,5 +1,6 @@
 /** The request `scan`: abundances along one or two parameters. */
 import type { RateLibrary } from "../nuclear/library.ts";
+import { fixedCosmology } from "../output/scan-output.ts";
 import type { ScanResults } from "../output/sweep-result.ts";
 import type { Envelope } from "./envelope.ts";
 import { makeEnvelope } from "./envelope.ts";
@@ -23,7 +24,7 @@ export async function computeScan(
   const axes = sweep.plan.axes.map(({ key, unit, values, log }) => ({ key, unit, count: values.length, log }));
   return makeEnvelope(
     "scan",
-    sweep.parameters,
+    fixedCosmology(sweep.parameters, axes),
     { axes, table },
     sweep.provenance,
     { ...counts, tolerance: sweep.parameters.tolerance },
