@@ -49,7 +49,7 @@ describe("parts that do not make a grid are refused with one line", () => {
       [[...all, "again.csv"], /both part 2/],
       [["whole.csv"], /not a part but a whole grid/],
       [[...all.slice(0, 3), "part4.ecsv"], /do not belong together/],
-      [[...all.slice(0, 3), "nosuch.csv"], /nosuch.csv: cannot be read \(ENOENT\)/],
+      [[...all.slice(0, 3), "nosuch.csv"], /nosuch.csv: cannot be read \(no such file\)/],
       [[...all.slice(0, 3), "."], /cannot be read \(EISDIR\)/],
       [["other.txt"], /other.txt: not a grid of this program/],
     ] as const) {
