@@ -5,7 +5,7 @@ import { type CosmologyParameters, RANGES } from "../parameters/cosmology.ts";
 import { provenanceLines, provenanceNotes, titleLine } from "./provenance-text.ts";
 import type { Envelope } from "./result.ts";
 import type { AxisResult, ScanResults } from "./sweep-result.ts";
-import { alignColumns, formatEstimate, formatNumber, wrap } from "./text.ts";
+import { alignColumns, formatConcise, formatNumber, wrap } from "./text.ts";
 
 /** Rows of the short table. */
 const SHORT_ROWS = 15;
@@ -33,7 +33,7 @@ export function sweepLines(results: ScanResults): string[] {
   const cell = (row: readonly (number | string)[], name: string) => {
     const value = row[table.columns.indexOf(name)] as number;
     return withErrors
-      ? formatEstimate(value, row[table.columns.indexOf(`${name}_sigma`)] as number)
+      ? formatConcise(value, row[table.columns.indexOf(`${name}_sigma`)] as number)
       : formatNumber(value);
   };
   const head = [...axes.map((axis) => axis.key), ...shown.map(abundanceLabel)];
@@ -46,7 +46,8 @@ export function sweepLines(results: ScanResults): string[] {
   const note =
     rest > 0
       ? `${numbers.length} of ${table.rows.length} rows; all, with every abundance, with --format csv, ecsv or json.`
-      : "Every abundance with --format csv, ecsv or json.";
+      : `${withErrors ? "Errors in brackets are those of the last digits. " : ""}Every abundance with --format csv, ecsv or json.`;
+
   return [
     ...axes.map(
       (axis) =>

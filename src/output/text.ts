@@ -47,6 +47,18 @@ export function formatEstimate(value: number, sigma?: number): string {
   return `${figure(value)} ± ${figure(sigma)}`;
 }
 
+/** A value with the error of its last digits in brackets, for narrow tables: `2.525(37)e-5`, `0.24684(11)`. */
+export function formatConcise(value: number, sigma: number): string {
+  const [figure, error] = formatEstimate(value, sigma).split(" ± ");
+  if (error === undefined) return figure;
+  const exponent = /e.*$/.exec(figure)?.[0] ?? "";
+  const digits = error
+    .replace(/e.*$/, "")
+    .replace(".", "")
+    .replace(/^0+(?=\d)/, "");
+  return `${figure.slice(0, figure.length - exponent.length)}(${digits})${exponent}`;
+}
+
 /** `1 file`, `3 files`. */
 export function counted(count: number, what: string): string {
   return `${count} ${what}${count === 1 ? "" : "s"}`;

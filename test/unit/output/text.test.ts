@@ -6,6 +6,7 @@ import { historyText } from "../../../src/output/history-output.ts";
 import {
   alignColumns,
   displayWidth,
+  formatConcise,
   formatEstimate,
   formatNumber,
   TEXT_WIDTH,
@@ -100,4 +101,11 @@ test("history reads in 80 columns", () => {
   const text = historyText(sampleHistory());
   for (const line of text.split("\n")) expect(displayWidth(line), line).toBeLessThanOrEqual(TEXT_WIDTH);
   expect(text.replace(VERSION, "x.y.z")).toMatchSnapshot();
+});
+
+test("concise notation: the error of the last digits in brackets", () => {
+  expect(formatConcise(2.525e-5, 3.7e-7)).toBe("2.525(37)e-5");
+  expect(formatConcise(0.24684, 0.00011)).toBe("0.24684(11)");
+  expect(formatConcise(5.45e-10, 3.9e-11)).toBe("5.45(39)e-10");
+  expect(formatConcise(1.5, 0)).toBe("1.5000");
 });
