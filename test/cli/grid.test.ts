@@ -50,7 +50,7 @@ describe("parts that do not make a grid are refused with one line", () => {
       [["whole.csv"], /not a part but a whole grid/],
       [[...all.slice(0, 3), "part4.ecsv"], /do not belong together/],
       [[...all.slice(0, 3), "nosuch.csv"], /nosuch.csv: cannot be read \(no such file\)/],
-      [[...all.slice(0, 3), "."], /cannot be read \(EISDIR\)/],
+      [[...all.slice(0, 3), "."], /cannot be read \(is a directory\)/],
       [["other.txt"], /other.txt: not a grid of this program/],
     ] as const) {
       const { status, err, out } = await join4(...names);
