@@ -147,7 +147,10 @@ export async function compareRates(
     );
 
   const rates = tables.map(evaluateRate);
-  const model = await modelFor({ ...keys, errors: "none", samples: 0, evaluations: withEvaluation(keys, id, reference) }, library);
+  const model = await modelFor(
+    { ...keys, errors: "none", samples: 0, evaluations: withEvaluation(keys, id, reference) },
+    library,
+  );
   const p = model.parameters();
   const responses = rateResponses(
     model,
