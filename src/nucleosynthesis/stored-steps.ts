@@ -9,6 +9,9 @@ import { lnUncertaintyAt, type Variation } from "./vary.ts";
 /** Range of eta10 over which the sequence was tuned and checked; outside it steps are chosen adaptively. */
 export const SEQUENCE_RANGE = { min: 1, max: 20 } as const;
 
+/** Where a step needs rows after its start, as shares of it. */
+const INNER_POINTS = [STAGE_POINTS[1], STAGE_POINTS[2], STAGE_POINTS[3], 1] as const;
+
 /** Rows of all steps at eta10 = 1, unscaled: start of the first, then second, third, fourth, end and slope of each. */
 interface StoredRows {
   readonly width: number;
@@ -40,7 +43,51 @@ function rowsOf(table: FluxTable, nodes: ArrayLike<number>): StoredRows {
   return made;
 }
 
-const scratch = new WeakMap<StoredRows, Float64Array>();
+/** A copy of the rows and the reactions whose columns in it are varied at present. */
+interface VariedRows {
+  readonly rows: Float64Array;
+  varied: readonly number[];
+}
+
+const scratch = new WeakMap<StoredRows, VariedRows>();
+
+/** Writes the columns of one reaction: those of the plain rows times f_u(T9)^p, or the plain ones without a variation. */
+function writeColumns(
+  table: FluxTable,
+  nodes: ArrayLike<number>,
+  { rows: plain, width }: StoredRows,
+  rows: Float64Array,
+  reaction: number,
+  variation?: Variation,
+): void {
+  const f = 2 * (reaction + 1);
+  let factor = 1;
+  let slope = 0;
+  const at = (s: number) => {
+    if (!variation) return;
+    const { ln, slope: rise } = lnUncertaintyAt(table, variation.lnF, s);
+    factor = Math.exp(variation.p * ln);
+    slope = variation.p * rise;
+  };
+  at(nodes[0]);
+  rows[f] = factor * plain[f];
+  rows[f + 1] = factor * plain[f + 1];
+  // Row where the coefficients at the start of the step stand.
+  let start = 0;
+  for (let k = 0, first = width; k + 1 < nodes.length; k++, first += 5 * width) {
+    const sloping = first + 4 * width + f;
+    rows[sloping] = factor * plain[sloping] + slope * rows[start + f];
+    rows[sloping + 1] = factor * plain[sloping + 1] + slope * rows[start + f + 1];
+    const h = nodes[k + 1] - nodes[k];
+    for (let i = 0; i < 4; i++) {
+      at(nodes[k] + INNER_POINTS[i] * h);
+      const row = first + i * width + f;
+      rows[row] = factor * plain[row];
+      rows[row + 1] = factor * plain[row + 1];
+    }
+    start = first + 3 * width;
+  }
+}
 
 /** Rows with the fluxes of varied reactions multiplied by f_u(T9)^p; the buffer is reused by the next call. */
 function variedRows(
@@ -49,38 +96,17 @@ function variedRows(
   plain: StoredRows,
   variations: readonly Variation[],
 ): StoredRows {
-  let rows = scratch.get(plain);
-  if (!rows) {
-    rows = plain.rows.slice();
-    scratch.set(plain, rows);
-  } else rows.set(plain.rows);
-  const { width } = plain;
-  const points = [STAGE_POINTS[1], STAGE_POINTS[2], STAGE_POINTS[3], 1];
-  for (const { reaction, p, lnF } of variations) {
-    const f = 2 * (reaction + 1);
-    const first = lnUncertaintyAt(table, lnF, nodes[0]);
-    let factor = Math.exp(p * first.ln);
-    let slope = p * first.slope;
-    rows[f] *= factor;
-    rows[f + 1] *= factor;
-    // Row where the coefficients at the start of the step stand.
-    let start = 0;
-    for (let k = 0, at = width; k + 1 < nodes.length; k++, at += 5 * width) {
-      const sloping = at + 4 * width;
-      rows[sloping + f] = factor * rows[sloping + f] + slope * rows[start + f];
-      rows[sloping + f + 1] = factor * rows[sloping + f + 1] + slope * rows[start + f + 1];
-      const h = nodes[k + 1] - nodes[k];
-      for (let i = 0; i < 4; i++) {
-        const here = lnUncertaintyAt(table, lnF, nodes[k] + points[i] * h);
-        factor = Math.exp(p * here.ln);
-        slope = p * here.slope;
-        rows[at + i * width + f] *= factor;
-        rows[at + i * width + f + 1] *= factor;
-      }
-      start = at + 3 * width;
-    }
+  let kept = scratch.get(plain);
+  if (!kept) {
+    kept = { rows: plain.rows.slice(), varied: [] };
+    scratch.set(plain, kept);
   }
-  return { width, rows };
+  const { rows } = kept;
+  const now = variations.map((v) => v.reaction);
+  for (const reaction of kept.varied) if (!now.includes(reaction)) writeColumns(table, nodes, plain, rows, reaction);
+  for (const variation of variations) writeColumns(table, nodes, plain, rows, variation.reaction, variation);
+  kept.varied = now;
+  return { width: plain.width, rows };
 }
 
 interface Workspace {
