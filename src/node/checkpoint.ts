@@ -55,7 +55,8 @@ function verified(line: string): string | undefined {
  * Opens the checkpoint of an output file.
  * @param request what the run computes, with everything its answers depend on
  * @param resume  whether an earlier run is to be continued
- * @throws {InputError} if there is a checkpoint but `resume` was not asked for, or it belongs to another request
+ * @throws {InputError} if there is a checkpoint but `resume` was not asked for, it belongs to another request, or its
+ *   first line is damaged
  */
 export function openCheckpoint(out: string, request: object, resume: boolean): Checkpoint {
   const path = checkpointPath(out);
@@ -135,7 +136,12 @@ function readLines(path: string, header: string, known: Map<string, unknown>): n
   let whole = 0;
   for (let end = bytes.indexOf(10); end >= 0; end = bytes.indexOf(10, whole)) {
     const text = verified(bytes.toString("utf8", whole, end));
-    if (text === undefined) break;
+    if (text === undefined) {
+      // A first line that is whole but not ours is no torn write: somebody changed the file.
+      if (whole === 0)
+        throw new InputError("checkpoint", `${path}:1: damaged, not a checkpoint; delete it to start anew`);
+      break;
+    }
     if (whole === 0) requireSame(path, header, text);
     else {
       const [stage, index, answer] = JSON.parse(text) as [number, number, unknown];
