@@ -167,8 +167,8 @@ describe("published predictions", () => {
     within(abundances({ omegaB: 0.02225, tauN: 880.3 }).dToH, 2.45e-5, 0.05e-5);
   });
 
-  // With today's rates we give 2.43e-5, 1.1 of their standard deviations lower; the d(p,g) fit of that time accounts
-  // for 0.07e-5 of the difference, the d+d polynomials (not in the library) for the rest.
+  // With today's rates we give 2.436e-5, 1.0 of their standard deviations lower; the d(p,g) fit of that time accounts for
+  // 0.08e-5 of the difference (2.513e-5), d+d rates 2.5 % lower would account for the rest (2.577e-5).
   test("Fields, Olive, Yeh & Young 2020, arXiv:1912.01132: D/H = 2.57(13)e-5 with the d(p,g) rate of the time", () => {
     const keys: Keys = { eta10: 6.13, tauN: 879.4, evaluations: { "d-p_gamma-he3": "descouvemont2004" } };
     within(abundances(keys).dToH, 2.57e-5, 0.13e-5);
