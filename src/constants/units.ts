@@ -26,9 +26,8 @@ export const HBARC_MEV_FM = HBARC_MEV_CM * 1e13;
 export const LIGHT_SPEED_KM_S = LIGHT_SPEED.value / 1000;
 /** Parsec in metre: IAU 2015 Resolution B2 (exact, 648000/pi au). */
 export const METRE_PER_PARSEC = 3.0856775814913673e16;
-/** Megaparsec in metre and in centimetre. */
+/** Megaparsec in metre. */
 export const METRE_PER_MPC = METRE_PER_PARSEC * 1e6;
-export const CM_PER_MPC = METRE_PER_MPC * 100;
 /** Julian year in seconds (IAU): 365.25 d. */
 export const SECONDS_PER_JULIAN_YEAR = 365.25 * 86400;
 /** Centimetre per metre, and the same squared and cubed. */

@@ -102,7 +102,6 @@ export interface Model {
     context: RunContext,
     inputs: RunInputs,
   ): { names: AbundanceName[]; values: number[]; counts: SolverCounts; stepping: Stepping };
-  /** Standardised sources of error in order: n_p (tau_n), each reaction; omega_b last where it has a sigma. */
   readonly library: RateLibrary;
 }
 

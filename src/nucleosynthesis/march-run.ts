@@ -6,14 +6,15 @@ import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { FluxTable } from "./flux-table.ts";
 
 /** Buffers of one network, reused from run to run. */
-interface Workspace {
+export interface Workspace {
   readonly march: March;
   readonly rows: { -readonly [K in keyof StepRows]: Float64Array };
 }
 
 const workspaces = new WeakMap<NetworkKernels, Workspace>();
 
-function workspaceOf(kernels: NetworkKernels, n: number, slots: number, fluxes: number): Workspace {
+/** The buffers that belong to some kernels. */
+export function workspaceOf(kernels: NetworkKernels, n: number, slots: number, fluxes: number): Workspace {
   let found = workspaces.get(kernels);
   if (!found) {
     const row = () => new Float64Array(fluxes + 1);

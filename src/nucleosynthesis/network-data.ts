@@ -3,6 +3,7 @@ import { type CompiledNetwork, compileNetwork } from "../network/compile.ts";
 import type { SelectedReaction } from "../nuclear/library.ts";
 import type { Nuclide } from "../nuclear/nuclide.ts";
 import { evaluateRate, type RateEvaluator } from "../nuclear/rate.ts";
+import { multiplicities } from "../nuclear/reaction.ts";
 import { type ReverseRatio, reverseRatio } from "../nuclear/reverse.ts";
 
 /** Id of the weak interchange n <-> p; its forward flux is n -> p. */
@@ -28,13 +29,8 @@ export interface NetworkData {
 
 /** Product of the factorials of the multiplicities: 2 for d + d, 6 for three identical particles. */
 export function identicalFactor(ids: readonly string[]): number {
-  const counts = new Map<string, number>();
   let factor = 1;
-  for (const id of ids) {
-    const count = (counts.get(id) ?? 0) + 1;
-    counts.set(id, count);
-    factor *= count;
-  }
+  for (const count of multiplicities(ids).values()) for (let k = 2; k <= count; k++) factor *= k;
   return factor;
 }
 

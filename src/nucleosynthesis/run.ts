@@ -51,8 +51,6 @@ export interface RunInputs {
   /** Relative error control. */
   readonly tolerance: number;
   readonly method?: "rodas4" | "rodas5p";
-  /** True: choose steps by their error even where a stored sequence would serve. */
-  readonly adaptive?: boolean;
   /** Rates varied by f_u(T9)^p where f_u changes with temperature; constant ones are among the factors. */
   readonly variations?: readonly Variation[];
   /** A flux table of the caller's instead of the context's; steps are then chosen adaptively. */
@@ -313,7 +311,7 @@ const OTHER_FACTOR = 100;
 /** The stored sequence serves the default tolerance and method in its range of eta and rates. */
 function mayUseSequence(
   { data, degenerate }: RunContext,
-  { tolerance, method, table, eta10, tauN, adaptive, factors }: RunInputs,
+  { tolerance, method, table, eta10, tauN, factors }: RunInputs,
 ): boolean {
   const suits =
     !degenerate &&
@@ -322,7 +320,6 @@ function mayUseSequence(
     tolerance === DEFAULTS.tolerance &&
     method === undefined &&
     table === undefined &&
-    adaptive !== true &&
     eta10 >= SEQUENCE_RANGE.min &&
     eta10 <= SEQUENCE_RANGE.max;
   if (!suits || factors === undefined) return suits;

@@ -1,8 +1,9 @@
 /** Integration on a stored sequence of steps: flux rows computed once a table, a run is arithmetic on known rows. */
 import type { NetworkKernels } from "../network/generate.ts";
-import { createMarch, type March, STAGE_POINTS, type StepRows } from "../network/march.ts";
+import { STAGE_POINTS } from "../network/march.ts";
 import type { SolverCounts } from "../numerics/ode-stiff.ts";
 import type { FluxTable } from "./flux-table.ts";
+import { workspaceOf } from "./march-run.ts";
 import { STEP_SEQUENCE } from "./steps.generated.ts";
 import { lnUncertaintyAt, type Variation } from "./vary.ts";
 
@@ -109,13 +110,6 @@ function variedRows(
   return { width: plain.width, rows };
 }
 
-interface Workspace {
-  readonly march: March;
-  readonly rows: { -readonly [K in keyof StepRows]: Float64Array };
-}
-
-const workspaces = new WeakMap<NetworkKernels, Workspace>();
-
 /** The nodes of the sequence within a table, its ends moved to the table's. */
 export function sequenceNodes(table: FluxTable): Float64Array {
   const nodes = Float64Array.from(STEP_SEQUENCE.nodes);
@@ -154,16 +148,7 @@ export function marchStored(
   }
   const plain = rowsOf(table, nodes);
   const source = variations ? variedRows(table, nodes, plain, variations) : plain;
-  let work = workspaces.get(kernels);
-  if (!work) {
-    const row = () => new Float64Array(source.width);
-    work = {
-      march: createMarch(kernels, y.length, slots),
-      rows: { start: row(), slope: row(), second: row(), third: row(), fourth: row(), end: row() },
-    };
-    workspaces.set(kernels, work);
-  }
-  const { march, rows } = work;
+  const { march, rows } = workspaceOf(kernels, y.length, slots, source.width - 1);
   const steps = nodes.length - 1;
   const { width } = source;
   load(source, 0, scale, eta10, rows.start);

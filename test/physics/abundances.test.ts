@@ -36,7 +36,7 @@ describe("identities", () => {
     });
   });
 
-  test("without nuclear reactions beyond n(p,g)d's reach the helium bound holds: Y_p < 2 X_n at the start of the network", () => {
+  test("helium takes at most the neutrons there are at the start of the network: Y_p < 2 X_n", () => {
     const p = model.parameters({});
     const context = model.context(p);
     const inputs = { eta10: p.eta10, tauN: p.tauN, tolerance: p.tolerance };
@@ -56,7 +56,7 @@ describe("identities", () => {
       tolerance: 1e-6,
     }).abundances().abundances;
     expect(byFactor.Yp?.value).toBeCloseTo(byGravity[0], 7);
-    expect((byFactor.dToH?.value as number) / byGravity[2] - 1).toBeLessThan(2e-6);
+    expect(Math.abs((byFactor.dToH?.value as number) / byGravity[2] - 1)).toBeLessThan(2e-6);
   });
 
   test("a prepared model gives what a fresh one gives, whatever was asked in between", () => {
